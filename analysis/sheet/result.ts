@@ -1,0 +1,124 @@
+import { z } from 'zod';
+
+/** What the program answers: one result for one sheet. Units are in the names (SI); `u…` is a standard uncertainty. */
+
+const numbers = z.array(z.number());
+
+export const findingSchema = z.object({
+  level: z.enum(['note', 'caution', 'stop']),
+  code: z.string(),
+  text: z.string(),
+});
+
+export const bodyStateSchema = z.enum(['measured', 'bridged', 'lost', 'manual']);
+
+/** Where a body is in a frame. A lost body has no position: x, y, ux, uy are absent. */
+const bodyInFrame = z.object({
+  x: z.number().optional(),
+  y: z.number().optional(),
+  ux: z.number().optional(),
+  uy: z.number().optional(),
+  score: z.number().optional(),
+  state: bodyStateSchema,
+  /** Mid-exposure time of the sensor row where this body is; absent with a global shutter. */
+  timeS: z.number().optional(),
+});
+
+const frame = z.object({
+  n: z.int(),
+  /** Mid-exposure time of the row where the tip is (without a tip: the first body). Zero is mid-exposure of row 0 of frame 0. */
+  timeS: z.number(),
+  bodies: z.record(z.string(), bodyInFrame),
+});
+
+const motion = z.object({
+  timeS: numbers,
+  xM: numbers,
+  yM: numbers,
+  vxMps: numbers,
+  vyMps: numbers,
+  axMps2: numbers,
+  ayMps2: numbers,
+  uXM: numbers,
+  uYM: numbers,
+  uVxMps: numbers,
+  uVyMps: numbers,
+  uAxMps2: numbers,
+  uAyMps2: numbers,
+  /** Measured positions (not smoothed), same times. */
+  measuredXM: numbers,
+  measuredYM: numbers,
+  method: z.string(),
+  settings: z.record(z.string(), z.unknown()),
+});
+
+const keyValue = z.object({
+  quantity: z.string(),
+  value: z.number(),
+  u: z.number(),
+  unit: z.string(),
+  /** Effective degrees of freedom; null when unlimited. */
+  dof: z.number().nullable(),
+  U95: z.number(),
+  k: z.number(),
+  /** For values that belong to a bandwidth. */
+  bandwidthHz: z.number().optional(),
+  /** How the value is defined, where the name alone leaves a choice. */
+  definition: z.string().optional(),
+  budget: z.array(z.object({ source: z.string(), u: z.number() })),
+});
+
+const theory = z.object({
+  model: z.enum(['freeFall', 'freeFallDrag', 'foldedTetherEnergy', 'foldedTetherMomentum', 'linkedTether']),
+  /** The body whose track the curve is held against. */
+  body: z.string(),
+  parameters: z.record(z.string(), z.number()),
+  uParameters: z.record(z.string(), z.number()),
+  chiSquared: z.number(),
+  dof: z.number(),
+  curve: z.object({ timeS: numbers, yM: numbers, vyMps: numbers, ayMps2: numbers }),
+});
+
+const verdict = z.object({
+  quantity: z.string(),
+  outcome: z.enum(['pass', 'fail', 'undecided']),
+  rule: z.enum(['guarded', 'simple']),
+  /** Distance of the value from the nearest limit; negative when outside. */
+  margin: z.number().nullable(),
+  unit: z.string(),
+});
+
+export const resultSchema = z.object({
+  schema: z.literal('tetherfall/result/1'),
+  program: z.object({ name: z.literal('tetherfall'), version: z.string(), commit: z.string() }),
+  inputs: z.object({
+    sheetSha256: z.string(),
+    footageSha256: z.string(),
+    footage: z.object({
+      widthPx: z.int(),
+      heightPx: z.int(),
+      bitDepth: z.int(),
+      frameCount: z.int(),
+      codec: z.string(),
+      pixelFormat: z.string(),
+      lumaRule: z.string(),
+      decoder: z.string(),
+    }),
+  }),
+  frames: z.array(frame),
+  motion: z.record(z.string(), motion),
+  keyValues: z.array(keyValue),
+  theory: z.array(theory),
+  verdicts: z.array(verdict),
+  findings: z.array(findingSchema),
+});
+
+export type Result = z.output<typeof resultSchema>;
+export type Finding = z.output<typeof findingSchema>;
+export type BodyState = z.output<typeof bodyStateSchema>;
+export type ResultFrame = Result['frames'][number];
+export type BodyInFrame = z.output<typeof bodyInFrame>;
+export type Motion = z.output<typeof motion>;
+export type KeyValue = z.output<typeof keyValue>;
+export type Theory = z.output<typeof theory>;
+export type Verdict = z.output<typeof verdict>;

@@ -1,0 +1,125 @@
+import { z } from 'zod';
+
+/**
+ * What the technician states about a drop. Units are in the names (SI); `u…` is a standard uncertainty (k = 1).
+ * Pixels: x right, y down, integer at pixel centres, origin at the centre of the top-left pixel of the frame as displayed.
+ */
+
+const finite = z.number().refine(Number.isFinite, 'must be a finite number');
+const positive = finite.refine((v) => v > 0, 'must be greater than 0');
+const notNegative = finite.refine((v) => v >= 0, 'must not be negative');
+const frameNumber = z.int().min(0);
+
+const pixelPoint = z.object({ x: finite, y: finite });
+
+const clock = z.discriminatedUnion('kind', [
+  z.object({
+    kind: z.literal('captureRate'),
+    captureRateHz: positive,
+    uCaptureRateRel: notNegative.optional(),
+  }),
+  z.object({ kind: z.literal('container') }),
+  z.object({ kind: z.literal('timestamps'), path: z.string().min(1) }),
+]);
+
+/** Brown radial model: undistorted = centre + (distorted - centre) (1 + k1 r² + k2 r⁴), r = distance / radiusPx. */
+const lens = z.object({ k1: finite, k2: finite.default(0), centre: pixelPoint, radiusPx: positive });
+
+const camera = z.object({
+  exposureS: notNegative.optional(),
+  /** Delay between the exposures of neighbouring sensor rows; 0 for a global shutter. */
+  rowTimeS: finite.optional(),
+  lens: lens.optional(),
+});
+
+const bar = z.object({
+  a: pixelPoint,
+  b: pixelPoint,
+  lengthM: positive,
+  uLengthM: notNegative.optional(),
+  /** Standard uncertainty of one mark along each axis. */
+  uMarkPx: notNegative.optional(),
+});
+
+const scale = z.object({
+  bars: z.array(bar).default([]),
+  plumb: z.object({ a: pixelPoint, b: pixelPoint }).optional(),
+  fiducials: z.array(z.object({ x: finite, y: finite, worldXM: finite, worldYM: finite })).optional(),
+  /** How far the bodies' plane is in front of (+) the plane of the scale bar, towards the camera. */
+  planeOffsetM: finite.optional(),
+  uPlaneOffsetM: notNegative.optional(),
+  cameraDistanceM: positive.optional(),
+});
+
+const site = z.union([
+  z.object({ gMps2: positive, uGMps2: notNegative.optional() }),
+  z.object({ latitudeDeg: finite.min(-90).max(90), heightM: finite.optional() }),
+]);
+
+const ambient = z.object({
+  temperatureC: finite.min(-80).max(80).optional(),
+  pressurePa: positive.optional(),
+  relativeHumidity: finite.min(0).max(1).optional(),
+});
+
+const body = z.object({
+  id: z.string().min(1).max(40),
+  role: z.enum(['tip', 'reference', 'other']),
+  /** The frame in which the body was placed at (x, y). */
+  frame: frameNumber.default(0),
+  x: finite,
+  y: finite,
+  /** Side of the square patch that is followed. */
+  patchPx: finite.min(5).max(401).optional(),
+  diameterM: positive.optional(),
+  massKg: positive.optional(),
+  /** Places set by hand; they win over what was tracked. */
+  marks: z.array(z.object({ frame: frameNumber, x: finite, y: finite })).optional(),
+});
+
+const tether = z.object({
+  lengthM: positive,
+  uLengthM: notNegative.optional(),
+  /** Horizontal distance of the two ends before release. */
+  separationM: notNegative.optional(),
+  massKg: positive.optional(),
+  links: z.int().min(1).optional(),
+  tipMassKg: notNegative.optional(),
+});
+
+const limit = z
+  .object({
+    quantity: z.string().min(1),
+    max: finite.optional(),
+    min: finite.optional(),
+    unit: z.string().min(1),
+    rule: z.enum(['guarded', 'simple']).default('guarded'),
+  })
+  .refine((l) => l.max !== undefined || l.min !== undefined, 'needs a max or a min');
+
+export const sheetSchema = z.object({
+  schema: z.literal('tetherfall/sheet/1'),
+  footage: z.object({
+    path: z.string().min(1),
+    firstFrame: frameNumber.default(0),
+    lastFrame: frameNumber.optional(),
+  }),
+  clock,
+  camera: camera.optional(),
+  scale,
+  /** Pixel that is the origin of the world; default: the tip's start, else the first body's. */
+  origin: pixelPoint.optional(),
+  site: site.optional(),
+  ambient: ambient.optional(),
+  bodies: z.array(body).min(1),
+  tether: tether.optional(),
+  limits: z.array(limit).default([]),
+});
+
+/** The sheet as checked: defaults of structure filled in, missing uncertainties still missing. */
+export type Sheet = z.output<typeof sheetSchema>;
+/** The sheet as written. */
+export type SheetInput = z.input<typeof sheetSchema>;
+export type SheetBody = Sheet['bodies'][number];
+export type SheetBar = Sheet['scale']['bars'][number];
+export type SheetLimit = Sheet['limits'][number];
