@@ -1,0 +1,88 @@
+import type { Finding } from './result.ts';
+import type { Sheet } from './sheet.ts';
+
+/** A bar shorter than this says little: half a pixel at each end is already 1 %. */
+const shortBarPx = 70;
+
+/** What is inconsistent in a sheet, as far as it can be told without the footage. `stop`: it cannot be reduced like this. */
+export function checkSheet(sheet: Sheet): Finding[] {
+  const findings: Finding[] = [];
+  const stop = (code: string, text: string) => findings.push({ level: 'stop', code, text });
+  const caution = (code: string, text: string) => findings.push({ level: 'caution', code, text });
+
+  const { footage, clock, camera, scale, bodies, tether } = sheet;
+  if (footage.lastFrame !== undefined && footage.lastFrame <= footage.firstFrame) {
+    stop(
+      'framesReversed',
+      `footage.lastFrame (${footage.lastFrame}) must be after footage.firstFrame (${footage.firstFrame}).`,
+    );
+  }
+
+  if (
+    clock.kind === 'captureRate' &&
+    camera?.exposureS !== undefined &&
+    camera.exposureS * clock.captureRateHz > 1
+  ) {
+    stop(
+      'exposureTooLong',
+      `camera.exposureS (${camera.exposureS} s) is longer than the time of a frame (${1 / clock.captureRateHz} s): check it and clock.captureRateHz.`,
+    );
+  }
+
+  if (scale.bars.length === 0 && (scale.fiducials?.length ?? 0) < 4) {
+    stop(
+      'scaleMissing',
+      'scale: state a scale bar (scale.bars) or at least four fiducials (scale.fiducials).',
+    );
+  }
+  scale.bars.forEach((bar, i) => {
+    const lengthPx = Math.hypot(bar.b.x - bar.a.x, bar.b.y - bar.a.y);
+    if (lengthPx < 2)
+      stop(
+        'barTooShort',
+        `scale.bars[${i}]: both marks are at the same place; mark the two ends of the bar.`,
+      );
+    else if (lengthPx < shortBarPx) {
+      caution(
+        'barShort',
+        `scale.bars[${i}]: only ${lengthPx.toFixed(0)} px long, so the scale is uncertain; use a longer bar.`,
+      );
+    }
+  });
+  if (scale.plumb && Math.hypot(scale.plumb.b.x - scale.plumb.a.x, scale.plumb.b.y - scale.plumb.a.y) < 2) {
+    stop(
+      'plumbTooShort',
+      'scale.plumb: both points are at the same place; mark two places far apart on the plumb line.',
+    );
+  }
+
+  const seen = new Set<string>();
+  for (const body of bodies) {
+    if (seen.has(body.id))
+      stop('bodyTwice', `bodies: the id "${body.id}" stands twice; give each body its own.`);
+    seen.add(body.id);
+    const last = footage.lastFrame ?? Number.POSITIVE_INFINITY;
+    if (body.frame < footage.firstFrame || body.frame > last) {
+      stop(
+        'bodyOutsideFrames',
+        `bodies: "${body.id}" is placed in frame ${body.frame}, outside the frames to be reduced.`,
+      );
+    }
+  }
+  for (const role of ['tip', 'reference'] as const) {
+    if (bodies.filter((b) => b.role === role).length > 1) {
+      stop('roleTwice', `bodies: only one body can be the ${role}; give the others the role "other".`);
+    }
+  }
+
+  if (tether?.separationM !== undefined && tether.separationM > tether.lengthM) {
+    stop(
+      'separationTooLong',
+      `tether.separationM (${tether.separationM} m) is longer than the tether (${tether.lengthM} m).`,
+    );
+  }
+  if (tether && !bodies.some((b) => b.role === 'tip')) {
+    caution('tipMissing', 'A tether is stated but no body is the tip: nothing can be said of the tether.');
+  }
+  return findings;
+}
