@@ -22,7 +22,8 @@ export interface Sampled {
 /** @param samples  (2 · (half + REACH) + 1)² values, row by row; they are consumed */
 export function makeLayer(samples: Float64Array, half: number): Layer {
   const side = 2 * (half + REACH) + 1;
-  if (samples.length !== side * side) throw new RangeError(`makeLayer: ${samples.length} samples for a side of ${side}`);
+  if (samples.length !== side * side)
+    throw new RangeError(`makeLayer: ${samples.length} samples for a side of ${side}`);
   return { half, coefficients: quinticCoefficients(samples, side, side) };
 }
 
@@ -96,7 +97,12 @@ export function makeSampler(half: number): Sampler {
           into.value[out + i] = v0 * ra + v1 * rb + v2 * rd + v3 * re + v4 * rf + v5 * rg;
           into.slopeY[out + i] = t0 * ra + t1 * rb + t2 * rd + t3 * re + t4 * rf + t5 * rg;
           into.slopeX[out + i] =
-            v0 * rowSlope[a] + v1 * rowSlope[b] + v2 * rowSlope[d] + v3 * rowSlope[e] + v4 * rowSlope[f] + v5 * rowSlope[g];
+            v0 * rowSlope[a] +
+            v1 * rowSlope[b] +
+            v2 * rowSlope[d] +
+            v3 * rowSlope[e] +
+            v4 * rowSlope[f] +
+            v5 * rowSlope[g];
         }
       }
     },

@@ -30,7 +30,8 @@ function filterLine(line: Float64Array, offset: number, stride: number, count: n
     for (let i = 1, at = offset + stride; i < count; i++, at += stride) line[at] += z * line[at - stride];
     const last = offset + (count - 1) * stride;
     line[last] = (z / (z * z - 1)) * (line[last] + z * line[last - stride]);
-    for (let i = count - 2, at = last - stride; i >= 0; i--, at -= stride) line[at] = z * (line[at + stride] - line[at]);
+    for (let i = count - 2, at = last - stride; i >= 0; i--, at -= stride)
+      line[at] = z * (line[at + stride] - line[at]);
   }
 }
 

@@ -1,0 +1,162 @@
+import { rowTime } from './clock/rowTime.ts';
+import { numbers } from './motion/numbers.ts';
+import type { WorldTrack } from './motion/worldTrack.ts';
+import { type Calibration, calibrate } from './scale/calibrate.ts';
+import { settle } from './sheet/assumptions.ts';
+import { checkSheet } from './sheet/checkSheet.ts';
+import type { BodyInFrame, Finding, Result, ResultFrame } from './sheet/result.ts';
+import type { Sheet } from './sheet/sheet.ts';
+import { siteGravity } from './theory/normalGravity.ts';
+import type { Track } from './track/track.ts';
+import { trackFindings } from './track/trackFindings.ts';
+import { verdicts } from './verdict/verdicts.ts';
+
+export interface ReduceInput {
+  readonly sheet: Sheet;
+  readonly program: Result['program'];
+  readonly inputs: Result['inputs'];
+  /** Mid-exposure time of row 0 of every frame of the footage [s]. */
+  readonly timeS: Float64Array;
+  readonly tracks: readonly Track[];
+  /** What was noticed on the way here: sheet, footage, clock. */
+  readonly findings: readonly Finding[];
+}
+
+/** From tracks to the result: clock and scale, motion, key values, theory, verdicts. Pure. */
+export function reduce(input: ReduceInput): Result {
+  const { sheet, tracks, timeS } = input;
+  const settled = settle(sheet);
+  const rowTimeS = settled.rowTimeS;
+
+  const calibration = calibrate(sheet, settled, originOf(sheet, tracks));
+  const worldTracks = tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
+  const g = sheet.site === undefined ? null : siteGravity(sheet.site);
+  const noSite: Finding[] =
+    g === null
+      ? [
+          {
+            level: 'caution',
+            code: 'siteMissing',
+            text: 'The site is not stated: theory and gravity check rest on standard gravity, uncertain by 0.015 m/s².',
+          },
+        ]
+      : [];
+
+  const derived = numbers({
+    tracks: worldTracks,
+    common: {
+      length: calibration.length,
+      time: [{ source: 'capture rate', uRel: settled.uCaptureRateRel }],
+      uDownRad: calibration.uDownRad,
+      frameTimeS: frameTime(timeS, tracks),
+      exposureS: settled.exposureS,
+      metrePerPx: calibration.metrePerPx,
+    },
+    g,
+    sheet,
+    footageEndsAtFrame: Math.max(...tracks.map((t) => t.frame[t.frame.length - 1] ?? 0)),
+  });
+  const decided = verdicts(sheet.limits, derived.keyValues);
+
+  return {
+    schema: 'tetherfall/result/1',
+    program: input.program,
+    inputs: input.inputs,
+    frames: resultFrames(sheet, tracks, timeS, rowTimeS),
+    motion: derived.motion,
+    keyValues: derived.keyValues,
+    theory: derived.theory,
+    verdicts: decided.verdicts,
+    findings: [
+      ...input.findings,
+      ...checkSheet(sheet),
+      ...settled.findings,
+      ...noSite,
+      ...calibration.findings,
+      ...trackFindings(tracks, sheet.bodies),
+      ...derived.findings,
+      ...decided.findings,
+    ],
+  };
+}
+
+/** The world's origin: as stated, else where the tip starts, else the first body. */
+function originOf(sheet: Sheet, tracks: readonly Track[]): { x: number; y: number } {
+  if (sheet.origin) return sheet.origin;
+  const tip = sheet.bodies.findIndex((b) => b.role === 'tip');
+  const index = tip < 0 ? 0 : tip;
+  const track = tracks[index];
+  const start = track.state.findIndex((s) => s === 'measured' || s === 'manual');
+  if (start >= 0) return { x: track.xPx[start], y: track.yPx[start] };
+  return sheet.bodies[index];
+}
+
+function isData(state: Track['state'][number]): boolean {
+  return state === 'measured' || state === 'manual';
+}
+
+function worldTrack(
+  track: Track,
+  sheet: Sheet,
+  timeS: Float64Array,
+  rowTimeS: number,
+  calibration: Calibration,
+): WorldTrack {
+  const body = sheet.bodies.find((b) => b.id === track.bodyId);
+  if (!body) throw new Error(`reduce: a track of "${track.bodyId}", which the sheet does not have`);
+  const used = Array.from(track.frame.keys()).filter((i) => isData(track.state[i]));
+  const points = used.map((i) =>
+    calibration.toWorld({ space: 'pixel', xPx: track.xPx[i], yPx: track.yPx[i] }),
+  );
+  return {
+    bodyId: body.id,
+    role: body.role,
+    frame: Int32Array.from(used, (i) => track.frame[i]),
+    timeS: Float64Array.from(used, (i) => rowTime(timeS[track.frame[i]], track.yPx[i], rowTimeS)),
+    xM: Float64Array.from(points, (p) => p.xM),
+    yM: Float64Array.from(points, (p) => p.yM),
+    uXM: Float64Array.from(used, (i) => track.uXPx[i] * calibration.metrePerPx),
+    uYM: Float64Array.from(used, (i) => track.uYPx[i] * calibration.metrePerPx),
+  };
+}
+
+/** Median time from frame to frame over the frames that were reduced [s]. */
+function frameTime(timeS: Float64Array, tracks: readonly Track[]): number {
+  const frames = tracks[0].frame;
+  const steps = Array.from({ length: frames.length - 1 }, (_, i) => timeS[frames[i + 1]] - timeS[frames[i]]);
+  steps.sort((a, b) => a - b);
+  return steps[steps.length >> 1] ?? 0;
+}
+
+function resultFrames(
+  sheet: Sheet,
+  tracks: readonly Track[],
+  timeS: Float64Array,
+  rowTimeS: number,
+): ResultFrame[] {
+  const tip = Math.max(
+    0,
+    sheet.bodies.findIndex((b) => b.role === 'tip'),
+  );
+  return Array.from(tracks[0].frame, (n, i) => {
+    const bodies: Record<string, BodyInFrame> = {};
+    for (const track of tracks) bodies[track.bodyId] = bodyInFrame(track, i, timeS[n], rowTimeS);
+    const tipRow = Number.isNaN(tracks[tip].yPx[i]) ? 0 : tracks[tip].yPx[i];
+    return { n, timeS: rowTime(timeS[n], tipRow, rowTimeS), bodies };
+  });
+}
+
+function bodyInFrame(track: Track, i: number, frameTimeS: number, rowTimeS: number): BodyInFrame {
+  const state = track.state[i];
+  if (state === 'lost') return { state };
+  const score = track.score[i];
+  return {
+    x: track.xPx[i],
+    y: track.yPx[i],
+    ux: track.uXPx[i],
+    uy: track.uYPx[i],
+    ...(Number.isNaN(score) ? {} : { score }),
+    state,
+    ...(rowTimeS === 0 ? {} : { timeS: rowTime(frameTimeS, track.yPx[i], rowTimeS) }),
+  };
+}

@@ -1,0 +1,103 @@
+import { resolve } from 'node:path';
+import { type FrameTimes, frameTimes } from '../../analysis/clock/frameTimes.ts';
+import { reduce } from '../../analysis/reduce.ts';
+import { checkSheet } from '../../analysis/sheet/checkSheet.ts';
+import type { Finding, Result } from '../../analysis/sheet/result.ts';
+import type { Sheet } from '../../analysis/sheet/sheet.ts';
+import type { WideSearch } from '../../analysis/track/track.ts';
+import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
+import { program } from '../program.ts';
+import { Refusal } from '../refusal.ts';
+import { followBodies } from './followBodies.ts';
+import { startPace } from './pace.ts';
+import type { Progress } from './progress.ts';
+import { readTimes } from './readTimes.ts';
+
+export interface ReduceOrder {
+  readonly sheet: Sheet;
+  readonly sheetSha256: string;
+  /** What the sheet's relative paths are relative to. */
+  readonly folder: string;
+  /** What was found when the sheet was read. */
+  readonly findings?: readonly Finding[];
+}
+
+export interface ReduceTools {
+  readonly openFootage: (path: string) => Promise<FrameSource>;
+  readonly search: WideSearch;
+  readonly signal?: AbortSignal;
+  readonly onProgress?: (progress: Progress) => void;
+}
+
+/**
+ * The whole way from a sheet to its result: footage → frames → tracks → clock, scale, motion, theory, verdict.
+ *
+ * @throws Refusal: 2 sheet, 3 footage, 4 a body was lost so that no key value can be given
+ */
+export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promise<Result> {
+  const { sheet, folder } = order;
+  const stop = checkSheet(sheet).find((f) => f.level === 'stop');
+  if (stop) throw new Refusal(stop.code, 2, stop.text);
+  const listedS =
+    sheet.clock.kind === 'timestamps' ? await readTimes(resolve(folder, sheet.clock.path)) : null;
+
+  const source = await tools.openFootage(resolve(folder, sheet.footage.path));
+  try {
+    const pace = startPace('track', tools.onProgress ?? (() => {}));
+    const followed = await followBodies(source, sheet, tools.search, tools.signal, pace.frameDone);
+    const { index, firstFrame, lastFrame, tracks } = followed;
+    tools.onProgress?.({
+      phase: 'motion',
+      framesDone: index.frameCount,
+      framesTotal: index.frameCount,
+      rateHz: 0,
+      timeLeftS: null,
+    });
+
+    const times = clockOrRefuse(frameTimes(sheet.clock, index, listedS, firstFrame, lastFrame));
+    const result = reduce({
+      sheet,
+      program,
+      inputs: {
+        sheetSha256: order.sheetSha256,
+        footageSha256: index.sha256,
+        footage: footageFacts(index, source),
+      },
+      timeS: times.timeS,
+      tracks,
+      findings: [...(order.findings ?? []), ...index.findings, ...times.findings],
+    });
+    refuseIfLost(result);
+    return result;
+  } finally {
+    await source.close();
+  }
+}
+
+function clockOrRefuse(times: FrameTimes): Extract<FrameTimes, { ok: true }> {
+  if (!times.ok) throw new Refusal('timesUnusable', 2, `${times.problem}.`);
+  return times;
+}
+
+function footageFacts(index: FootageIndex, source: FrameSource): Result['inputs']['footage'] {
+  return {
+    widthPx: index.widthPx,
+    heightPx: index.heightPx,
+    bitDepth: index.bitDepth,
+    frameCount: index.frameCount,
+    codec: index.codec,
+    pixelFormat: index.pixelFormat,
+    lumaRule: index.lumaRule,
+    decoder: `${source.backend.name} ${source.backend.version}`,
+  };
+}
+
+/** A result without one key value is none: say which body was lost, and where. */
+function refuseIfLost(result: Result): void {
+  if (result.keyValues.length > 0) return;
+  const lost = result.findings
+    .filter((f) => f.code === 'bodyLost' || f.code === 'bodyDidNotMove')
+    .map((f) => f.text);
+  const why = lost.length > 0 ? lost : result.findings.filter((f) => f.level !== 'note').map((f) => f.text);
+  throw new Refusal('noKeyValue', 4, `No key value can be given. ${why.join(' ')}`);
+}
