@@ -84,7 +84,7 @@ export function reduce(input: ReduceInput): Result {
 function originOf(sheet: Sheet, tracks: readonly Track[]): { x: number; y: number } {
   if (sheet.origin) return sheet.origin;
   const tip = sheet.bodies.findIndex((b) => b.role === 'tip');
-  const index = tip < 0 ? 0 : tip;
+  const index = Math.max(tip, 0);
   const track = tracks[index];
   const start = track.state.findIndex((s) => s === 'measured' || s === 'manual');
   if (start >= 0) return { x: track.xPx[start], y: track.yPx[start] };

@@ -1,7 +1,12 @@
 import type { BodyState } from '../sheet/result.ts';
 import { blurModel } from './blur.ts';
-import { type BodyModel, type Match, makeMatcher } from './match.ts';
-import { cutOut, halfOf, patchModel } from './patchModel.ts';
+import { startCuttings } from './cuttings.ts';
+import { makeLayer } from './layer.ts';
+import type { StillBody } from './learnBody.ts';
+import { startLearner } from './learner.ts';
+import { type BodyModel, type Match, makeMatcher, type Plate } from './match.ts';
+import { cutOut, roundMask } from './patchModel.ts';
+import { brightnessOf } from './plate.ts';
 import { predict } from './predict.ts';
 import type { Picture, WideSearch } from './track.ts';
 
@@ -31,7 +36,9 @@ export interface Sighting {
 
 export interface Follower {
   /** Frames must come one after the other, from the frame in which the body was placed; backwards is as good as forwards. */
-  push(n: number, picture: Picture): Sighting;
+  push(n: number, picture: Picture): void;
+  /** Everything that was seen, in the order of the frames pushed: the best that is known after the last frame. */
+  finish(): Sighting[];
 }
 
 /** Frames of which the prediction is made. */
@@ -44,28 +51,40 @@ const leastScore = 0.5;
 const doubtfulFall = 0.15;
 const doubtfulPx = 2;
 
+/** What a follower is given besides the body. */
+export interface Surroundings {
+  /** The frame in which the body was placed. */
+  readonly first: Picture;
+  /** What was seen of the body while it rested. */
+  readonly still: StillBody;
+  /** The background; null when the camera moves or there are too few frames for it. */
+  readonly plate: Plate | null;
+  readonly search: WideSearch;
+  /** Exposure as a share of the time from frame to frame. */
+  readonly exposureShare: number;
+}
+
 /**
  * Follows one body from frame to frame: prediction with constant acceleration, Gauss-Newton there; where that is doubtful a
  * wide search, and again Gauss-Newton. The place is that of the point that was marked.
  *
- * @param exposureShare  exposure as a share of the time from frame to frame
+ * In front of a plate the body's coverage is first guessed from its rest frames and then learned from the frames in which it
+ * passes over other background; without a plate the patch is matched as it is.
  */
 export function startFollower(
   body: PlacedBody,
-  first: Picture,
-  search: WideSearch,
-  noise: number,
-  exposureShare: number,
+  { first, still, plate, search, exposureShare }: Surroundings,
 ): Follower {
-  const half = halfOf(body.patchPx);
+  const { half, centreX, centreY, noise } = still;
   const matcher = makeMatcher(half);
-  const zeroX = Math.round(body.xPx);
-  const zeroY = Math.round(body.yPx);
-  const markX = body.xPx - zeroX;
-  const markY = body.yPx - zeroY;
-  const model = patchModel(first, zeroX, zeroY, half);
-  const patch = patchPicture(first, zeroX, zeroY, half);
-  const expectedNoise = Math.max(noise, 0.3);
+  const markX = body.xPx - centreX;
+  const markY = body.yPx - centreY;
+  const learner = plate ? startLearner(still, plate) : null;
+  const usedPlate = learner ? plate : null;
+  let model = learner?.model() ?? meanPatchModel(still);
+  const patch = patchPicture(first, centreX, centreY, half);
+  // The rest frames' mean carries noise of its own, the same in all frames.
+  const variances = 1 + 1 / still.frames;
 
   let frames: number[] = [];
   let xs: number[] = [];
@@ -83,20 +102,21 @@ export function startFollower(
     state,
     xPx: m ? m.xPx + markX : Number.NaN,
     yPx: m ? m.yPx + markY : Number.NaN,
-    // The patch comes from one frame and is as noisy as the frame it is held against: twice the variance.
-    uXPx: m ? Math.sqrt(2 * m.varXPx2) : Number.NaN,
-    uYPx: m ? Math.sqrt(2 * m.varYPx2) : Number.NaN,
+    uXPx: m ? Math.sqrt(variances * m.varXPx2) : Number.NaN,
+    uYPx: m ? Math.sqrt(variances * m.varYPx2) : Number.NaN,
     score: m ? m.score : Number.NaN,
   });
+  const sightings: Sighting[] = [];
+  const cuttings = startCuttings(half, usedPlate);
 
   /** The best acceptable match near where the body is expected. */
-  const look = (picture: Picture, n: number): Match | null => {
+  const look = (picture: Picture, n: number, brightness: number): Match | null => {
     const px = predict(frames, xs, n);
     const py = predict(frames, ys, n);
     const gap = Math.abs(n - frames[frames.length - 1]);
     const speedPx = Math.hypot(px.rate, py.rate);
-    const blurred: BodyModel = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
-    const near = matcher.match(picture, blurred, px.value, py.value, expectedNoise, null, 1);
+    const blurred = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
+    const near = matcher.match(picture, blurred, px.value, py.value, noise, usedPlate, brightness);
     const offPx = near ? Math.hypot(near.xPx - px.value, near.yPx - py.value) : Number.POSITIVE_INFINITY;
     const sure = near?.converged && gap === 1 && near.score > usualScore - doubtfulFall && offPx < doubtfulPx;
     if (near && sure) return near;
@@ -104,7 +124,9 @@ export function startFollower(
     // A body can change its speed by as much as it has (a tether that comes straight), or by a few pixels from rest.
     const radiusPx = Math.min(6 + 1.5 * speedPx + 3 * gap, 150);
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
-    const wide = seen ? matcher.match(picture, blurred, seen.xPx, seen.yPx, expectedNoise, null, 1) : null;
+    const wide = seen
+      ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, usedPlate, brightness)
+      : null;
     const acceptable = [near, wide].filter(
       (m): m is Match =>
         m?.converged === true &&
@@ -117,44 +139,126 @@ export function startFollower(
     );
   };
 
+  /** Where the body is in the next frame. */
+  const follow = (n: number, picture: Picture): Sighting => {
+    const brightness = usedPlate ? brightnessOf(picture, usedPlate) : 1;
+    const mark = body.marks.find((m) => m.frame === n);
+    if (mark) {
+      // The track is split here: what was seen before says nothing about what comes after but the speed.
+      const keepsSpeed = frames.length > 1 && !lost;
+      const shiftX = keepsSpeed ? mark.xPx - markX - predict(frames, xs, n).value : 0;
+      const shiftY = keepsSpeed ? mark.yPx - markY - predict(frames, ys, n).value : 0;
+      xs = keepsSpeed ? xs.map((x) => x + shiftX) : [];
+      ys = keepsSpeed ? ys.map((y) => y + shiftY) : [];
+      frames = keepsSpeed ? frames : [];
+      remember(n, mark.xPx - markX, mark.yPx - markY);
+      lost = false;
+      return {
+        n,
+        state: 'manual',
+        xPx: mark.xPx,
+        yPx: mark.yPx,
+        uXPx: body.uMarkPx,
+        uYPx: body.uMarkPx,
+        score: Number.NaN,
+      };
+    }
+    if (lost) return sighting(n, 'lost', null);
+    const found =
+      frames.length === 0
+        ? matcher.match(picture, model, centreX, centreY, noise, usedPlate, brightness)
+        : look(picture, n, brightness);
+    if (!found) {
+      lost = frames.length === 0 || Math.abs(n - frames[frames.length - 1]) > longestGap;
+      return sighting(n, 'lost', null);
+    }
+    remember(n, found.xPx, found.yPx);
+    usualScore += 0.1 * (Math.min(found.score, 1) - usualScore);
+    cuttings.keep(n, picture, brightness, found.xPx, found.yPx);
+    const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
+    if (learner?.learn(picture, usedPlate, brightness, found.xPx, found.yPx, blurPx)) model = learner.model();
+    return sighting(n, 'measured', found);
+  };
+
   return {
     push(n, picture) {
-      const mark = body.marks.find((m) => m.frame === n);
-      if (mark) {
-        // The track is split here: what was seen before says nothing about what comes after but the speed.
-        const keepsSpeed = frames.length > 1 && !lost;
-        const shiftX = keepsSpeed ? mark.xPx - markX - predict(frames, xs, n).value : 0;
-        const shiftY = keepsSpeed ? mark.yPx - markY - predict(frames, ys, n).value : 0;
-        xs = keepsSpeed ? xs.map((x) => x + shiftX) : [];
-        ys = keepsSpeed ? ys.map((y) => y + shiftY) : [];
-        frames = keepsSpeed ? frames : [];
-        remember(n, mark.xPx - markX, mark.yPx - markY);
-        lost = false;
-        return {
-          n,
-          state: 'manual',
-          xPx: mark.xPx,
-          yPx: mark.yPx,
-          uXPx: body.uMarkPx,
-          uYPx: body.uMarkPx,
-          score: Number.NaN,
-        };
-      }
-      if (frames.length === 0) {
-        const own = matcher.match(picture, model, zeroX, zeroY, expectedNoise, null, 1);
-        remember(n, own?.xPx ?? zeroX, own?.yPx ?? zeroY);
-        return sighting(n, own ? 'measured' : 'lost', own);
-      }
-      if (lost) return sighting(n, 'lost', null);
-      const found = look(picture, n);
-      if (!found) {
-        lost = Math.abs(n - frames[frames.length - 1]) > longestGap;
-        return sighting(n, 'lost', null);
-      }
-      remember(n, found.xPx, found.yPx);
-      usualScore += 0.1 * (Math.min(found.score, 1) - usualScore);
-      return sighting(n, 'measured', found);
+      sightings.push(follow(n, picture));
     },
+    finish() {
+      // The first frames were matched with what was known of the body then: match the kept ones again with what is known now,
+      // learn once more from the better places, and match for good.
+      for (let round = 0; round < 2; round++) {
+        const speeds = speedsOf(sightings);
+        if (round > 0) learner?.restart();
+        if (round > 0 && learner) {
+          for (const [i, cut] of cuttings.of(sightings)) {
+            const s = sightings[i];
+            const speed = speeds[i];
+            learner.learn(
+              cut.picture,
+              cut.plate,
+              cut.brightness,
+              s.xPx - markX - cut.left,
+              s.yPx - markY - cut.top,
+              exposureShare * Math.hypot(speed.x, speed.y),
+            );
+          }
+        }
+        learner?.conclude();
+        model = learner?.model() ?? model;
+        for (const [i, cut] of cuttings.of(sightings)) {
+          const s = sightings[i];
+          const speed = speeds[i];
+          const blurred = blurModel(model, speed.x * exposureShare, speed.y * exposureShare);
+          const m = matcher.match(
+            cut.picture,
+            blurred,
+            s.xPx - markX - cut.left,
+            s.yPx - markY - cut.top,
+            noise,
+            cut.plate,
+            cut.brightness,
+          );
+          if (m?.converged && m.score > leastScore) {
+            sightings[i] = sighting(s.n, 'measured', { ...m, xPx: m.xPx + cut.left, yPx: m.yPx + cut.top });
+          }
+        }
+      }
+      return sightings;
+    },
+  };
+}
+
+/** Speed of the body at each sighting [px per frame], from the parabola through its neighbours; zero where it stands alone. */
+function speedsOf(sightings: readonly Sighting[]): { x: number; y: number }[] {
+  return sightings.map((s, i) => {
+    const near = sightings
+      .slice(Math.max(0, i - 2), i + 3)
+      .filter((o) => o.state === 'measured' || o.state === 'manual');
+    if (near.length < 2 || Number.isNaN(s.xPx)) return { x: 0, y: 0 };
+    const frames = near.map((o) => o.n);
+    // Backwards in time the frames descend: the rate is per frame of the footage all the same.
+    return {
+      x: predict(
+        frames,
+        near.map((o) => o.xPx),
+        s.n,
+      ).rate,
+      y: predict(
+        frames,
+        near.map((o) => o.yPx),
+        s.n,
+      ).rate,
+    };
+  });
+}
+
+function meanPatchModel(still: StillBody): BodyModel {
+  return {
+    half: still.half,
+    appearance: makeLayer(still.mean.slice(), still.half),
+    coverage: null,
+    mask: roundMask(still.half),
   };
 }
 

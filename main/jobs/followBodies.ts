@@ -3,11 +3,16 @@ import type { Sheet, SheetBody } from '../../analysis/sheet/sheet.ts';
 import { bridgeGaps } from '../../analysis/track/bridge.ts';
 import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
+import { plateOf } from '../../analysis/track/plate.ts';
+import { type Rest, startRest } from '../../analysis/track/rest.ts';
+import { startSampling } from '../../analysis/track/sampling.ts';
 import type { Picture, Track, WideSearch } from '../../analysis/track/track.ts';
 import { trackability } from '../../analysis/track/trackability.ts';
 import { trackOf } from '../../analysis/track/trackOf.ts';
 import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
 import { Refusal } from '../refusal.ts';
+import { startPace } from './pace.ts';
+import type { Progress } from './progress.ts';
 
 export interface Followed {
   readonly index: FootageIndex;
@@ -19,9 +24,22 @@ export interface Followed {
 /** Standard uncertainty of a place set by hand [px] where nothing better is known. */
 const uMarkPx = 0.5;
 
+/** Frames kept for the plate: enough for a quiet median, few enough for memory (31 MB at 1280 × 800, 8 bit). */
+const plateFrames = 31;
+
+/** A body with what is gathered about it on the way. */
+interface Run {
+  readonly placed: PlacedBody;
+  first: Picture | null;
+  rest: Rest | null;
+  follower: Follower | null;
+  sightings: Sighting[];
+}
+
 /**
- * Follows every body of a sheet through the footage: forwards in the one pass in which the footage is indexed, then backwards
- * for bodies that were placed in a later frame than the first.
+ * Follows every body of a sheet through the footage, in two passes: the first indexes the footage, gathers frames for the
+ * plate and watches the bodies while they rest; the second follows them. Bodies that were placed in a later frame than the
+ * first are then followed backwards.
  *
  * @throws Refusal (status 2) for marks outside the picture, a body without features, frames that do not exist
  */
@@ -30,44 +48,102 @@ export async function followBodies(
   sheet: Sheet,
   search: WideSearch,
   signal: AbortSignal | undefined,
-  frameDone: (framesDone: number, framesTotal: number | null) => void,
+  report: (progress: Progress) => void,
 ): Promise<Followed> {
   const { firstFrame } = sheet.footage;
   const wantedLast = sheet.footage.lastFrame ?? Number.POSITIVE_INFINITY;
-  const exposureShare = exposureShareOf(sheet);
   const patches = settle(sheet).patchPx;
-  const runs = sheet.bodies.map((body, i) => ({
-    placed: placedBody(body, patches[i]),
-    follower: null as Follower | null,
-    sightings: [] as Sighting[],
-  }));
+  const runs = sheet.bodies.map(
+    (body, i): Run => ({
+      placed: placedBody(body, patches[i]),
+      first: null,
+      rest: null,
+      follower: null,
+      sightings: [],
+    }),
+  );
 
+  const sampling = startSampling(plateFrames);
+  const indexPace = startPace('index', report);
   const index = await source.index({
     signal,
     onFrame({ n, picture }, expectedCount) {
       if (n === firstFrame) refuseMarksOutside(sheet, picture);
       if (n >= firstFrame && n <= wantedLast) {
-        for (const run of runs) {
-          if (n === run.placed.frame) run.follower = followerAt(run.placed, picture, search, exposureShare);
-          if (run.follower) run.sightings.push(run.follower.push(n, picture));
-        }
+        sampling.push(n - firstFrame, picture);
+        for (const run of runs) watch(run, n, picture);
       }
-      frameDone(n + 1, expectedCount);
+      indexPace.frameDone(n + 1, expectedCount);
     },
   });
+  const lastFrame = lastFrameOf(sheet, index, runs);
 
+  const places = runs.flatMap(({ placed, first }) =>
+    first ? [{ xPx: placed.xPx, yPx: placed.yPx, radiusPx: placed.patchPx, picture: first }] : [],
+  );
+  const plate = plateOf(sampling.frames, places);
+  const exposureShare = exposureShareOf(sheet, index);
+  for (const run of runs) {
+    if (!run.first || !run.rest) throw new Error(`followBodies: frame ${run.placed.frame} never came`);
+    run.follower = startFollower(run.placed, {
+      first: run.first,
+      still: run.rest.still(),
+      plate,
+      search,
+      exposureShare,
+    });
+  }
+
+  const trackPace = startPace('track', report);
+  const frames = lastFrame - firstFrame + 1;
+  for await (const { n, picture } of source.frames(firstFrame, lastFrame, signal)) {
+    for (const run of runs) if (n >= run.placed.frame) run.follower?.push(n, picture);
+    trackPace.frameDone(n - firstFrame + 1, frames);
+  }
+  for (const run of runs) {
+    run.sightings = run.follower?.finish() ?? [];
+    if (run.placed.frame > firstFrame && run.first && run.rest) {
+      const back = startFollower(run.placed, {
+        first: run.first,
+        still: run.rest.still(),
+        plate,
+        search,
+        exposureShare,
+      });
+      for (let n = run.placed.frame; n >= firstFrame; n--) back.push(n, await source.frame(n, signal));
+      run.sightings.unshift(...back.finish().slice(1).reverse());
+    }
+  }
+  return {
+    index,
+    firstFrame,
+    lastFrame,
+    tracks: runs.map((run) => trackOf(run.placed.id, bridgeGaps(run.sightings))),
+  };
+}
+
+/** First pass: the frame in which the body was placed, and those after it for as long as it rests. */
+function watch(run: Run, n: number, picture: Picture): void {
+  const { placed } = run;
+  if (n === placed.frame) {
+    run.first = { ...picture, luma: picture.luma.slice() };
+    run.rest = startRest(run.first, placed.xPx, placed.yPx, placed.patchPx, noiseOrRefuse(placed, picture));
+  } else if (n > placed.frame) run.rest?.push(picture);
+}
+
+/** The last frame to reduce: what was asked for, as far as the footage has it. */
+function lastFrameOf(sheet: Sheet, index: FootageIndex, runs: readonly Run[]): number {
+  const { firstFrame, lastFrame: wantedLast } = sheet.footage;
+  const last = index.frameCount - 1;
   const damaged = index.findings.some((f) => f.code === 'footageDamaged');
-  const lastFrame = Math.min(wantedLast, index.frameCount - 1);
-  if (
-    firstFrame > lastFrame ||
-    (wantedLast !== Number.POSITIVE_INFINITY && lastFrame < wantedLast && !damaged)
-  ) {
+  if (firstFrame > last || (wantedLast !== undefined && last < wantedLast && !damaged)) {
     throw new Refusal(
       'framesMissing',
       2,
-      `footage: frames ${firstFrame} to ${Number.isFinite(wantedLast) ? wantedLast : 'the end'} are to be reduced, but the footage has frames 0 to ${index.frameCount - 1}; correct firstFrame and lastFrame.`,
+      `footage: frames ${firstFrame} to ${wantedLast ?? 'the end'} are to be reduced, but the footage has frames 0 to ${last}; correct firstFrame and lastFrame.`,
     );
   }
+  const lastFrame = Math.min(wantedLast ?? last, last);
   if (lastFrame - firstFrame < 2) {
     throw new Refusal(
       'framesTooFew',
@@ -75,24 +151,15 @@ export async function followBodies(
       `footage: only ${lastFrame - firstFrame + 1} frames can be read; a drop cannot be reduced from so few.`,
     );
   }
-
-  for (const run of runs) {
-    if (run.placed.frame > lastFrame) {
-      throw new Refusal(
-        'bodyOutsideFrames',
-        2,
-        `bodies: "${run.placed.id}" is placed in frame ${run.placed.frame}, but the last frame that can be read is ${lastFrame}.`,
-      );
-    }
-    if (run.placed.frame > firstFrame)
-      run.sightings.unshift(
-        ...(await followBack(source, run.placed, firstFrame, search, exposureShare, signal)),
-      );
+  const late = runs.find((run) => run.placed.frame > lastFrame);
+  if (late) {
+    throw new Refusal(
+      'bodyOutsideFrames',
+      2,
+      `bodies: "${late.placed.id}" is placed in frame ${late.placed.frame}, but the last frame that can be read is ${lastFrame}.`,
+    );
   }
-  const tracks = runs.map((run) =>
-    trackOf(run.placed.id, bridgeGaps(run.sightings.filter((s) => s.n <= lastFrame))),
-  );
-  return { index, firstFrame, lastFrame, tracks };
+  return lastFrame;
 }
 
 function placedBody(body: SheetBody, patchPx: number): PlacedBody {
@@ -107,14 +174,21 @@ function placedBody(body: SheetBody, patchPx: number): PlacedBody {
   };
 }
 
-/** Exposure as a share of the frame time, where the clock states a rate; other clocks are known only after indexing. */
-function exposureShareOf(sheet: Sheet): number {
+/** Exposure as a share of the time from frame to frame; 0 where one of them is not known. */
+function exposureShareOf(sheet: Sheet, index: FootageIndex): number {
   const { clock, camera } = sheet;
-  if (clock.kind !== 'captureRate' || camera?.exposureS === undefined) return 0;
-  return camera.exposureS * clock.captureRateHz;
+  if (camera?.exposureS === undefined) return 0;
+  if (clock.kind === 'captureRate') return camera.exposureS * clock.captureRateHz;
+  const first = index.pts[0];
+  const last = index.pts[index.frameCount - 1];
+  if (clock.kind === 'timestamps' || first === null || last === null || last === first) return 0;
+  return (
+    (camera.exposureS * (index.frameCount - 1)) / (((last - first) * index.timeBase.num) / index.timeBase.den)
+  );
 }
 
-function followerAt(body: PlacedBody, picture: Picture, search: WideSearch, exposureShare: number): Follower {
+/** The pixels' noise around a body as it was placed; refuses a place that cannot be followed. */
+function noiseOrRefuse(body: PlacedBody, picture: Picture): number {
   const half = halfOf(body.patchPx);
   const where = `bodies: "${body.id}" at x ${body.xPx}, y ${body.yPx} in frame ${body.frame}`;
   if (2 * half + 1 > Math.min(picture.widthPx, picture.heightPx)) {
@@ -125,36 +199,16 @@ function followerAt(body: PlacedBody, picture: Picture, search: WideSearch, expo
     );
   }
   const judged = trackability(picture, Math.round(body.xPx), Math.round(body.yPx), half);
-  if (!judged.ok) {
-    const reason =
-      judged.reason === 'featureless'
-        ? 'the patch shows nothing but an even background'
-        : 'the patch shows only a straight edge, along which it could slide';
-    throw new Refusal(
-      'bodyFeatureless',
-      2,
-      `${where}: ${reason}; place it on the body, or make patchPx larger.`,
-    );
-  }
-  return startFollower(body, picture, search, judged.noise, exposureShare);
-}
-
-/** Frames from the one before the body was placed back to the first, in ascending order. */
-async function followBack(
-  source: FrameSource,
-  body: PlacedBody,
-  firstFrame: number,
-  search: WideSearch,
-  exposureShare: number,
-  signal: AbortSignal | undefined,
-): Promise<Sighting[]> {
-  const start = await source.frame(body.frame, signal);
-  const follower = followerAt(body, start, search, exposureShare);
-  follower.push(body.frame, start);
-  const backwards: Sighting[] = [];
-  for (let n = body.frame - 1; n >= firstFrame; n--)
-    backwards.push(follower.push(n, await source.frame(n, signal)));
-  return backwards.reverse();
+  if (judged.ok) return judged.noise;
+  const reason =
+    judged.reason === 'featureless'
+      ? 'the patch shows nothing but an even background'
+      : 'the patch shows only a straight edge, along which it could slide';
+  throw new Refusal(
+    'bodyFeatureless',
+    2,
+    `${where}: ${reason}; place it on the body, or make patchPx larger.`,
+  );
 }
 
 function refuseMarksOutside(sheet: Sheet, picture: Picture): void {

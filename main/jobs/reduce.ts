@@ -9,7 +9,6 @@ import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
 import { program } from '../program.ts';
 import { Refusal } from '../refusal.ts';
 import { followBodies } from './followBodies.ts';
-import { startPace } from './pace.ts';
 import type { Progress } from './progress.ts';
 import { readTimes } from './readTimes.ts';
 
@@ -43,10 +42,15 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
 
   const source = await tools.openFootage(resolve(folder, sheet.footage.path));
   try {
-    const pace = startPace('track', tools.onProgress ?? (() => {}));
-    const followed = await followBodies(source, sheet, tools.search, tools.signal, pace.frameDone);
-    const { index, firstFrame, lastFrame, tracks } = followed;
-    tools.onProgress?.({
+    const report = tools.onProgress ?? (() => {});
+    const { index, firstFrame, lastFrame, tracks } = await followBodies(
+      source,
+      sheet,
+      tools.search,
+      tools.signal,
+      report,
+    );
+    report({
       phase: 'motion',
       framesDone: index.frameCount,
       framesTotal: index.frameCount,

@@ -1,0 +1,66 @@
+import type { Plate } from './match.ts';
+import type { Picture } from './track.ts';
+
+/** The part of one frame around a body, and of the plate behind it. */
+export interface Cutting {
+  readonly picture: Picture;
+  readonly plate: Plate | null;
+  readonly brightness: number;
+  /** The frame's pixel that is the cutting's (0, 0). */
+  readonly left: number;
+  readonly top: number;
+}
+
+/** Parts of the first frames, kept so that they can be matched again when more is known of the body. */
+export interface Cuttings {
+  /** Keeps the part of frame n around (xPx, yPx), as long as there is room. */
+  keep(n: number, picture: Picture, brightness: number, xPx: number, yPx: number): void;
+  /** The kept cuttings that belong to measured sightings, each with the sighting's index. */
+  of(sightings: readonly { readonly n: number; readonly state: string }[]): [number, Cutting][];
+}
+
+/** Room for one body's cuttings [bytes]: a thousand frames of a usual patch. */
+const roomBytes = 48 * 1024 * 1024;
+/** Pixels around the window: a body's place may still move by this much, and its model reaches a little further. */
+const margin = 10;
+
+export function startCuttings(half: number, plate: Plate | null): Cuttings {
+  const kept = new Map<number, Cutting>();
+  let usedBytes = 0;
+  return {
+    keep(n, picture, brightness, xPx, yPx) {
+      if (usedBytes > roomBytes) return;
+      const left = Math.max(0, Math.round(xPx) - half - margin);
+      const top = Math.max(0, Math.round(yPx) - half - margin);
+      const right = Math.min(picture.widthPx - 1, Math.round(xPx) + half + margin);
+      const bottom = Math.min(picture.heightPx - 1, Math.round(yPx) + half + margin);
+      if (right <= left || bottom <= top) return;
+      const widthPx = right - left + 1;
+      const heightPx = bottom - top + 1;
+      const luma =
+        picture.luma instanceof Uint8Array
+          ? new Uint8Array(widthPx * heightPx)
+          : new Uint16Array(widthPx * heightPx);
+      const level = plate ? new Float32Array(widthPx * heightPx) : null;
+      for (let row = 0; row < heightPx; row++) {
+        const from = (top + row) * picture.widthPx + left;
+        luma.set(picture.luma.subarray(from, from + widthPx), row * widthPx);
+        if (plate) level?.set(plate.level.subarray(from, from + widthPx), row * widthPx);
+      }
+      usedBytes += luma.byteLength + (level?.byteLength ?? 0);
+      kept.set(n, {
+        picture: { widthPx, heightPx, bitDepth: picture.bitDepth, luma },
+        plate: level ? { widthPx, heightPx, level } : null,
+        brightness,
+        left,
+        top,
+      });
+    },
+    of(sightings) {
+      return sightings.flatMap((s, i): [number, Cutting][] => {
+        const cut = s.state === 'measured' ? kept.get(s.n) : undefined;
+        return cut ? [[i, cut]] : [];
+      });
+    },
+  };
+}
