@@ -1,4 +1,4 @@
-import { join } from 'node:path';
+import { isAbsolute, join } from 'node:path';
 import { Readable } from 'node:stream';
 import type { ReadableStream as NodeReadableStream } from 'node:stream/web';
 import { Hono } from 'hono';
@@ -13,12 +13,15 @@ import type { OpenFootages } from './openFootages.ts';
 import { openWithProgress } from './openWithProgress.ts';
 import type { Services } from './services.ts';
 
+const footagePath = z.object({
+  path: z.string().refine(isAbsolute, 'must be the whole path of the footage'),
+});
 const frameAddress = z.object({ id: z.string(), n: z.string().regex(/^\d{1,9}$/, 'must be a frame number') });
 
 /** Footage and its frames. */
 export function footageRoutes({ openFootage, dataFolder }: Services, opened: OpenFootages) {
   return new Hono()
-    .post('/', checked('json', z.object({ path: z.string().min(1) })), (c) => {
+    .post('/', checked('json', footagePath), (c) => {
       const { path } = c.req.valid('json');
       return eventStream<FootageEvent>((send, signal) =>
         openWithProgress(path, openFootage, opened, send, signal),

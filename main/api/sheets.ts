@@ -10,7 +10,7 @@ import { postedSheet } from './postedSheet.ts';
 import { saveSheet } from './saveSheet.ts';
 import { sheetForFolder } from './sheetPaths.ts';
 
-const path = z.string().refine(isAbsolute, 'must be an absolute path');
+const path = z.string().refine(isAbsolute, 'must be the whole path of a file');
 const save = z.object({
   path,
   sheet: postedSheet,
@@ -29,8 +29,8 @@ export function sheetRoutes() {
           : { problems: parsed.problems, findings: [] },
       );
     })
-    .post('/open', checked('json', z.object({ path: z.string().min(1) })), async (c) => {
-      const asked = resolve(c.req.valid('json').path);
+    .post('/open', checked('json', z.object({ path })), async (c) => {
+      const asked = resolve(c.req.valid('json').path); // without `..`
       const { sheet, folder, findings } = await readSheet(asked);
       return c.json({ sheet, folder, path: asked, findings: [...findings, ...checkSheet(sheet)] });
     })

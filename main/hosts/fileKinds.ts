@@ -1,7 +1,21 @@
 import { extname } from 'node:path';
 
 /** Endings of the footage that Tetherfall is made for (videos and numbered stills), without the dot. */
-export const footageEndings = ['mp4', 'mov', 'm4v', 'avi', 'mkv', 'webm', 'png', 'tif', 'tiff'] as const;
+export const footageEndings = [
+  'ts',
+  'mts',
+  'mxf',
+  'wmv',
+  'mp4',
+  'mov',
+  'm4v',
+  'avi',
+  'mkv',
+  'webm',
+  'png',
+  'tif',
+  'tiff',
+] as const;
 
 export type FileKind = 'footage' | 'sheet' | 'other';
 

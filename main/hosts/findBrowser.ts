@@ -1,5 +1,5 @@
 import { accessSync, constants, statSync } from 'node:fs';
-import { delimiter, join } from 'node:path';
+import { posix, win32 } from 'node:path';
 
 /** What looking for a browser needs to know of the machine. */
 export interface Machine {
@@ -47,12 +47,14 @@ export function needsNoSandbox(platform = process.platform, userId = process.get
 }
 
 function onPath({ env, platform }: Machine): string[] {
+  const { delimiter, join } = pathsOf(platform);
   const ending = platform === 'win32' ? '.exe' : '';
-  const folders = (env.PATH ?? env.Path ?? '').split(platform === 'win32' ? ';' : delimiter).filter(Boolean);
+  const folders = (env.PATH ?? env.Path ?? '').split(delimiter).filter(Boolean);
   return names.flatMap((name) => folders.map((folder) => join(folder, name + ending)));
 }
 
 function usualPlaces({ env, platform }: Machine): string[] {
+  const { join } = pathsOf(platform);
   if (platform === 'darwin') {
     const roots = ['/Applications', join(env.HOME ?? '', 'Applications')];
     return macApplications.flatMap((app) =>
@@ -66,6 +68,10 @@ function usualPlaces({ env, platform }: Machine): string[] {
     return windowsPrograms.flatMap((parts) => roots.map((root) => join(root, ...parts)));
   }
   return ['/snap/bin/chromium', '/opt/google/chrome/chrome', '/usr/lib/chromium/chromium'];
+}
+
+function pathsOf(platform: NodeJS.Platform) {
+  return platform === 'win32' ? win32 : posix;
 }
 
 function thisMachine(): Machine {

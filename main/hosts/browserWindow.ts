@@ -1,0 +1,59 @@
+import { type ChildProcess, spawn } from 'node:child_process';
+import { once } from 'node:events';
+import { mkdtemp, rm } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { needsNoSandbox } from './findBrowser.ts';
+
+export interface OpenedBrowser {
+  /** Settles, with what it ended by, when the browser has ended and its profile is gone. */
+  readonly closed: Promise<string>;
+  /** Ends the browser. */
+  close(): Promise<void>;
+}
+
+/**
+ * Opens an address as a window of its own, with a fresh profile: so the browser does not hand over to one that is running, and
+ * its end is the window's end.
+ */
+export async function openInBrowser(browser: string, url: string): Promise<OpenedBrowser> {
+  const profile = await mkdtemp(join(tmpdir(), 'tetherfall-window-'));
+  const child = spawn(browser, browserArguments(url, profile), { stdio: 'ignore' });
+  const closed = ended(child).finally(() => removeProfile(profile));
+  return {
+    closed,
+    async close() {
+      child.kill();
+      await closed;
+    },
+  };
+}
+
+/** @param noSandbox  only where the browser cannot start otherwise */
+export function browserArguments(url: string, profile: string, noSandbox = needsNoSandbox()): string[] {
+  return [
+    `--app=${url}`,
+    `--user-data-dir=${profile}`,
+    '--no-first-run',
+    '--no-default-browser-check',
+    '--disable-background-networking',
+    '--disable-component-update',
+    '--disable-sync',
+    '--window-size=1440,900',
+    ...(noSandbox ? ['--no-sandbox'] : []),
+  ];
+}
+
+async function ended(child: ChildProcess): Promise<string> {
+  try {
+    const [code, signal] = await once(child, 'exit');
+    return signal === null ? `exit code ${code}` : `signal ${signal}`;
+  } catch (error) {
+    return error instanceof Error ? error.message : String(error); // it could not be started
+  }
+}
+
+/** The browser's helpers may still be writing for a moment after it has ended. */
+async function removeProfile(profile: string): Promise<void> {
+  await rm(profile, { recursive: true, force: true, maxRetries: 10, retryDelay: 100 });
+}
