@@ -1,0 +1,269 @@
+import * as av from 'node-av';
+import type { StreamFacts } from './decoder.ts';
+import { quarterTurn } from './ffmpegFacts.ts';
+import { isSilentDamage } from './ffmpegLog.ts';
+import { READABLE_FORMATS } from './formats.ts';
+import type { NodeAvMessage, NodeAvOrder } from './nodeAvMessages.ts';
+
+type Send = (message: NodeAvMessage, samples?: Uint8Array) => Promise<void>;
+
+/** What FFmpeg's libraries complained of, in order. */
+class Complaints {
+  first: string | null = null;
+  constructor() {
+    av.Log.setLevel(av.AV_LOG_WARNING);
+    const options = { maxLevel: av.AV_LOG_WARNING } as const;
+    av.Log.setCallback((level, message) => this.hear(level, message.trim()), options);
+  }
+  hear(level: number, text: string): void {
+    if (level <= av.AV_LOG_ERROR || isSilentDamage(text)) this.first ??= text;
+  }
+}
+
+interface Opened {
+  readonly format: av.FormatContext;
+  readonly stream: av.Stream;
+  readonly videoStreamCount: number;
+}
+
+/** Does what an order asks and answers with messages. Runs in the node-av process only. */
+export async function answerOrder(order: NodeAvOrder, send: Send): Promise<void> {
+  if (order.task === 'version') return await send({ type: 'version', version: av.ffmpegVersion() });
+  const complaints = new Complaints();
+  const opened = await openVideo(order, complaints, send);
+  if (opened === null) return;
+  if (order.task === 'describe') return await describe(opened, complaints, send);
+  await decode(opened, order, complaints, send);
+}
+
+async function openVideo(order: NodeAvOrder, complaints: Complaints, send: Send): Promise<Opened | null> {
+  const format = new av.FormatContext();
+  format.allocContext();
+  const options: Record<string, string> = {
+    format_whitelist: READABLE_FORMATS,
+    protocol_whitelist: 'file,data',
+  };
+  const stills = order.script !== '';
+  if (stills) options.safe = '0';
+  const demuxer = stills ? av.InputFormat.findInputFormat('concat') : null;
+  const url = stills ? `data:text/plain;base64,${Buffer.from(order.script).toString('base64')}` : order.url;
+  const status = await format.openInput(url, demuxer, av.Dictionary.fromObject(options));
+  if (status >= 0) await format.findStreamInfo();
+  const all = status < 0 ? [] : format.streams;
+  const videos = all.filter(
+    (s) =>
+      s.codecpar.codecType === av.AVMEDIA_TYPE_VIDEO && !s.hasDisposition(av.AV_DISPOSITION_ATTACHED_PIC),
+  );
+  const stream = videos[0];
+  if (stream !== undefined) return { format, stream, videoStreamCount: videos.length };
+  await settle();
+  const complaint = complaints.first ?? (status < 0 ? av.FFmpegError.strerror(status) : null);
+  await send({ type: 'noVideo', hasVideo: false, hasOther: all.length > 0, complaint });
+  return null;
+}
+
+async function openDecoder({ stream }: Opened, threads: number): Promise<av.CodecContext | null> {
+  const codec = av.Codec.findDecoder(stream.codecpar.codecId);
+  if (codec === null) return null;
+  const decoder = new av.CodecContext();
+  decoder.allocContext3(codec);
+  decoder.parametersToContext(stream.codecpar);
+  decoder.pktTimebase = stream.timeBase;
+  decoder.threadCount = threads;
+  return (await decoder.open2(codec)) < 0 ? null : decoder;
+}
+
+/** FFmpeg's log reaches JavaScript by way of the event loop. */
+function settle(): Promise<void> {
+  return new Promise((resolve) => setImmediate(resolve));
+}
+
+/** Decoded frames in order of display; the frame is reused. Complaints made before a frame are known when it comes. */
+async function* decodedFrames(
+  opened: Opened,
+  decoder: av.CodecContext,
+  complaints: Complaints,
+  careful: boolean,
+): AsyncGenerator<av.Frame> {
+  const packet = new av.Packet();
+  packet.alloc();
+  const frame = new av.Frame();
+  frame.alloc();
+  for (let atEnd = false; !atEnd; ) {
+    const read = await opened.format.readFrame(packet);
+    atEnd = read < 0;
+    if (atEnd && read !== av.AVERROR_EOF) complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(read));
+    if (!atEnd && packet.streamIndex !== opened.stream.index) {
+      packet.unref();
+      continue;
+    }
+    const sent = await decoder.sendPacket(atEnd ? null : packet);
+    packet.unref();
+    if (sent < 0) complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(sent));
+    if (careful) await settle();
+    for (;;) {
+      const got = await decoder.receiveFrame(frame);
+      if (careful) await settle();
+      if (got === av.AVERROR_EAGAIN || got === av.AVERROR_EOF) break;
+      if (got < 0) {
+        complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(got));
+        break;
+      }
+      if (frame.decodeErrorFlags !== 0 || frame.hasFlags(av.AV_FRAME_FLAG_CORRUPT)) {
+        complaints.hear(av.AV_LOG_ERROR, 'corrupt decoded frame');
+      }
+      yield frame;
+    }
+  }
+  await settle();
+}
+
+async function describe(opened: Opened, complaints: Complaints, send: Send): Promise<void> {
+  const { format, stream, videoStreamCount } = opened;
+  const decoder = await openDecoder(opened, 1);
+  if (decoder !== null) {
+    for await (const frame of decodedFrames(opened, decoder, complaints, false)) {
+      const rate = stream.avgFrameRate;
+      const facts: StreamFacts = {
+        codec: av.avGetCodecName(stream.codecpar.codecId) ?? 'unknown',
+        pixelFormat: formatName(frame),
+        widthPx: frame.width,
+        heightPx: frame.height,
+        timeBase: { num: stream.timeBase.num, den: stream.timeBase.den },
+        clockwiseDeg: quarterTurn(counterClockwiseDeg(stream)),
+        videoStreamCount,
+        startS: seconds(format.startTime) ?? 0,
+        durationS: seconds(format.duration),
+        frameRateHz: rate.num > 0 && rate.den > 0 ? rate.num / rate.den : null,
+      };
+      return await send({ type: 'facts', facts });
+    }
+  }
+  await settle();
+  await send({ type: 'noVideo', hasVideo: true, hasOther: false, complaint: complaints.first });
+}
+
+function seconds(microseconds: bigint): number | null {
+  return microseconds === av.AV_NOPTS_VALUE ? null : Number(microseconds) / 1e6;
+}
+
+function formatName(frame: av.Frame): string {
+  return av.avGetPixFmtName(frame.format as av.AVPixelFormat) ?? 'unknown';
+}
+
+/** The display matrix: nine 32-bit numbers; the first and fourth hold cosine and sine of the turn in 16.16 fixed point. */
+function counterClockwiseDeg(stream: av.Stream): number {
+  const matrix = stream.codecpar.getCodedSideData(av.AV_PKT_DATA_DISPLAYMATRIX);
+  if (matrix === null) return 0;
+  return (-Math.atan2(matrix.readInt32LE(4), matrix.readInt32LE(0)) * 180) / Math.PI;
+}
+
+async function decode(opened: Opened, order: NodeAvOrder, complaints: Complaints, send: Send): Promise<void> {
+  const careful = order.task === 'count';
+  const decoder = await openDecoder(opened, careful ? 1 : 0);
+  if (decoder === null) throw new Error('the decoder that described the footage cannot be opened again');
+  if ('pts' in order.from) {
+    const { index } = opened.stream;
+    await opened.format.seekFrame(index, BigInt(order.from.pts), av.AVSEEK_FLAG_BACKWARD);
+  }
+  await settle();
+  const onOpening = complaints.first;
+  if (careful) complaints.first = null; // what is complained of while the file is looked at comes again in decoding
+  const most = order.count ?? Number.POSITIVE_INFINITY;
+  const samplesOf = order.filter === 'extractplanes=y' ? new PlaneCopy() : new FilterChain(order.filter);
+  let sent = 0;
+  let seen = 0;
+  let beforeComplaint = 0;
+  let changed: string | null = null;
+  for await (const frame of decodedFrames(opened, decoder, complaints, careful)) {
+    if (complaints.first === null) beforeComplaint++;
+    changed = changeOf(frame, order);
+    if (changed !== null) break;
+    const time = frame.bestEffortTimestamp;
+    const pts = time === av.AV_NOPTS_VALUE ? null : Number(time);
+    const wanted = 'pts' in order.from ? pts !== null && pts >= order.from.pts : seen >= order.from.frame;
+    seen++;
+    if (careful || !wanted) continue;
+    const bidirectional = frame.pictType === av.AV_PICTURE_TYPE_B;
+    await send({ type: 'frame', pts, bidirectional }, samplesOf.read(frame));
+    if (++sent >= most) break;
+  }
+  await send({ type: 'end', complaint: complaints.first ?? onOpening, changed, beforeComplaint });
+}
+
+function changeOf(frame: av.Frame, { expected }: NodeAvOrder): string | null {
+  if (expected === null) return null;
+  if (frame.width !== expected.widthPx || frame.height !== expected.heightPx) {
+    return `size changes to ${frame.width} × ${frame.height}`;
+  }
+  const name = formatName(frame);
+  return name === expected.pixelFormat ? null : `pixel format changes to ${name}`;
+}
+
+/** The first plane's rows without their padding: for 8-bit planar formats the same as `extractplanes=y`. */
+class PlaneCopy {
+  #out = new Uint8Array(0);
+
+  read(frame: av.Frame, rowBytes = frame.width): Uint8Array {
+    const plane = frame.data?.[0];
+    const stride = frame.linesize[0] ?? 0;
+    if (plane === undefined || stride < rowBytes) throw new Error('a decoded frame has no first plane');
+    const bytes = rowBytes * frame.height;
+    if (this.#out.length !== bytes) this.#out = new Uint8Array(bytes);
+    if (stride === rowBytes) {
+      this.#out.set(plane.subarray(0, bytes));
+    } else {
+      for (let row = 0; row < frame.height; row++) {
+        this.#out.set(plane.subarray(row * stride, row * stride + rowBytes), row * rowBytes);
+      }
+    }
+    return this.#out;
+  }
+}
+
+/** The same libavfilter chain that the ffmpeg programs run. */
+class FilterChain {
+  readonly #chain: string;
+  readonly #copy = new PlaneCopy();
+  readonly #out = new av.Frame();
+  #built: { graph: av.FilterGraph; source: av.FilterContext; sink: av.FilterContext } | null = null;
+
+  constructor(chain: string) {
+    this.#chain = chain;
+    this.#out.alloc();
+  }
+
+  read(frame: av.Frame): Uint8Array {
+    this.#built ??= this.#build(frame);
+    const { source, sink } = this.#built;
+    frame.pts = 0n; // times are read before; here they could only hold frames back
+    const added = source.buffersrcAddFrameSync(frame, av.AV_BUFFERSRC_FLAG_KEEP_REF);
+    const got = added < 0 ? added : sink.buffersinkGetFrameSync(this.#out);
+    if (got < 0) throw new Error(`the filter ${this.#chain} gives no frame: ${av.FFmpegError.strerror(got)}`);
+    const samples = this.#copy.read(this.#out, (this.#out.width * bitsPerPixel(this.#out)) / 8);
+    this.#out.unref();
+    return samples;
+  }
+
+  #build(frame: av.Frame): { graph: av.FilterGraph; source: av.FilterContext; sink: av.FilterContext } {
+    const graph = new av.FilterGraph();
+    graph.alloc();
+    const from = `buffer@from=video_size=${frame.width}x${frame.height}:pix_fmt=${formatName(frame)}:time_base=1/1:pixel_aspect=1/1`;
+    const parsed = graph.parsePtr(`${from},${this.#chain},buffersink@to`);
+    const configured = parsed < 0 ? parsed : graph.configSync();
+    const source = graph.getFilter('buffer@from');
+    const sink = graph.getFilter('buffersink@to');
+    if (configured < 0 || source === null || sink === null) {
+      throw new Error(`the filter ${this.#chain} cannot be set up: ${av.FFmpegError.strerror(configured)}`);
+    }
+    return { graph, source, sink }; // the graph must outlive its ends
+  }
+}
+
+/** Of the formats that filters put out here: grey of 8 to 16 bits, rgb24, rgb48. */
+function bitsPerPixel(frame: av.Frame): number {
+  const name = formatName(frame);
+  if (name === 'rgb24') return 24;
+  if (name.startsWith('rgb48')) return 48;
+  return name === 'gray' ? 8 : 16;
+}
