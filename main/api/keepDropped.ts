@@ -55,10 +55,20 @@ async function writeHashed(bytes: AsyncIterable<Uint8Array>, path: string, room:
       else done(null, chunk);
     },
   });
-  await pipeline(bytes, watch, createWriteStream(path, { flags: 'wx' }));
+  await pipeline(arrivingWhole(bytes), watch, createWriteStream(path, { flags: 'wx' }));
   if (sizeBytes === 0)
     throw new Refusal('fileEmpty', 2, 'The dropped file is empty; drop a file with footage.');
   return hash.digest('hex');
+}
+
+async function* arrivingWhole(bytes: AsyncIterable<Uint8Array>): AsyncGenerator<Uint8Array> {
+  try {
+    yield* bytes;
+  } catch (error) {
+    throw new Refusal('dropBroken', 2, 'The dropped file did not arrive whole; drop it again.', {
+      cause: error,
+    });
+  }
 }
 
 /** Making a folder either succeeds or tells that it was there: that is what keeps two writers apart. */
