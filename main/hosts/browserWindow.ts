@@ -3,6 +3,7 @@ import { once } from 'node:events';
 import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { setTimeout } from 'node:timers/promises';
 import { needsNoSandbox } from './findBrowser.ts';
 
 export interface OpenedBrowser {
@@ -19,7 +20,10 @@ export interface OpenedBrowser {
 export async function openInBrowser(browser: string, url: string): Promise<OpenedBrowser> {
   const profile = await mkdtemp(join(tmpdir(), 'tetherfall-window-'));
   const child = spawn(browser, browserArguments(url, profile), { stdio: 'ignore' });
-  const closed = ended(child).finally(() => removeProfile(profile));
+  const closed = ended(child).then(async (end) => {
+    await removeProfile(profile, child.exitCode !== 0 && !child.killed);
+    return end;
+  });
   return {
     closed,
     async close() {
@@ -53,7 +57,15 @@ async function ended(child: ChildProcess): Promise<string> {
   }
 }
 
-/** The browser's helpers may still be writing for a moment after it has ended. */
-async function removeProfile(profile: string): Promise<void> {
-  await rm(profile, { recursive: true, force: true, maxRetries: 10, retryDelay: 100 });
+/**
+ * The browser's helpers may still be writing for a moment after it has ended; after a start that failed they even make the
+ * folder again (seen up to 0.5 s later), so that is looked at until it stays away.
+ */
+async function removeProfile(profile: string, failed: boolean): Promise<void> {
+  const remove = () => rm(profile, { recursive: true, force: true, maxRetries: 10, retryDelay: 100 });
+  await remove();
+  for (let looks = failed ? 4 : 0; looks > 0; looks--) {
+    await setTimeout(400);
+    await remove();
+  }
 }
