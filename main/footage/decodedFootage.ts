@@ -16,8 +16,13 @@ const MOST_FRAMES_IN_BLOCK = 64;
 /** Opens footage with a decoder. @throws Refusal (status 3) where there is no video to decode */
 export async function openDecoded(path: string, decoder: Decoder): Promise<FrameSource> {
   const input = await footageInput(path);
-  const facts = await decoder.describe(input, new AbortController().signal);
-  return new DecodedFootage(path, input, facts, decoder);
+  try {
+    const facts = await decoder.describe(input, new AbortController().signal);
+    return new DecodedFootage(path, input, facts, decoder);
+  } catch (error) {
+    await decoder.close();
+    throw error;
+  }
 }
 
 interface Loading {
@@ -119,6 +124,7 @@ class DecodedFootage implements FrameSource {
     this.#life.abort(new DOMException('the footage was closed', 'AbortError'));
     const ended = [...this.#streams].map((stream) => stream.return().catch(() => {}));
     await Promise.allSettled([...ended, this.#indexing, this.#loading?.done]);
+    await this.#decoder.close();
     this.#cache.clear();
   }
 

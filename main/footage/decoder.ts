@@ -56,6 +56,11 @@ export interface Decoder {
   describe(input: FootageInput, signal: AbortSignal): Promise<StreamFacts>;
   /** Leaving the loop early ends the decoder. */
   decode(order: DecodeOrder): AsyncGenerator<DecodedFrame, DecodeEnd>;
-  /** Decodes again, on one thread, and counts the frames that came out before the first complaint. */
+  /**
+   * Decodes again, on one thread, and counts the frames that can be trusted: those that came out before the decoder's first
+   * complaint, and no more than packets were read before the demuxer's first complaint.
+   */
   framesBeforeComplaint(order: DecodeOrder): Promise<number>;
+  /** Ends what the decoder keeps running between decodings. */
+  close(): Promise<void>;
 }

@@ -11,7 +11,8 @@ export type LogLine =
       readonly bidirectional: boolean;
     }
   | { readonly kind: 'timeBase'; readonly num: number; readonly den: number }
-  | { readonly kind: 'complaint'; readonly text: string }
+  | { readonly kind: 'complaint'; readonly text: string; readonly origin: string }
+  | { readonly kind: 'demuxed' }
   | { readonly kind: 'decoded' }
   | { readonly kind: 'other'; readonly text: string };
 
@@ -40,19 +41,21 @@ export function readLogLine(line: string): LogLine {
   const timeBase = /Parsed_showinfo.*\] config in time_base: (\d+)\/(\d+)/.exec(line);
   if (timeBase !== null) return { kind: 'timeBase', num: Number(timeBase[1]), den: Number(timeBase[2]) };
   if (/\] decoder -> /.test(line)) return { kind: 'decoded' };
-  const text = complaintOf(line);
-  return text === null ? { kind: 'other', text: line } : { kind: 'complaint', text };
+  if (/\] demuxer -> .*type:video/.test(line)) return { kind: 'demuxed' };
+  return complaintOf(line) ?? { kind: 'other', text: line };
 }
 
-function complaintOf(line: string): string | null {
+function complaintOf(line: string): LogLine | null {
   const parts = /^((?:\[[^\]]*\] )*?)\[(error|fatal|panic|warning)\] (.*)$/.exec(line);
   if (parts === null || AFTER_DECODER.test(line)) return null;
-  const text = (parts[3] ?? '').trim();
-  if (parts[2] !== 'warning') return text;
+  const origin = (parts[1] ?? '').trim();
+  const text = (parts[3] ?? '')
+    .trim()
+    .replace(/^file:.*: (?=corrupt )/, '')
+    .replace(/\.$/, '');
   // ffmpeg's own warnings name the file, which may be called anything: of those only the two about corruption count
-  const counts =
-    parts[1] === '' ? /: corrupt (?:input packet|decoded frame)/.test(text) : isSilentDamage(text);
-  return counts ? text : null;
+  const damage = origin === '' ? /^corrupt (?:input packet|decoded frame)/.test(text) : isSilentDamage(text);
+  return parts[2] !== 'warning' || damage ? { kind: 'complaint', text, origin } : null;
 }
 
 /** Whether a demuxer's or decoder's warning speaks of wrong bytes. */

@@ -1,11 +1,12 @@
 import { ByteReader } from './byteReader.ts';
 import { type Child, startChild } from './childProcess.ts';
+import { ComplaintWatch } from './complaintWatch.ts';
 import { concatScript } from './concatScript.ts';
 import type { DecodedFrame, DecodeEnd, DecodeOrder, Decoder, StreamFacts } from './decoder.ts';
 import { readFacts } from './ffmpegFacts.ts';
 import { eachLine, type LogLine, readLogLine } from './ffmpegLog.ts';
 import type { FootageInput } from './footageInput.ts';
-import { READABLE_FORMATS } from './formats.ts';
+import { CHECKS, READABLE_FORMATS } from './formats.ts';
 import { layoutOf } from './layoutOf.ts';
 import { noVideo } from './noVideo.ts';
 import { frameBytes } from './pixelLayout.ts';
@@ -70,21 +71,15 @@ export function ffmpegProgram(backendName: string, found: ProgramFound): Decoder
     const args = ['-threads', '1', '-debug_ts', ...reading(input), ...found.passthrough, '-f', 'null', '-'];
     const child = start(args, input, signal);
     child.stdout.resume();
-    let frames = 0;
-    let begun = false; // what is complained of while the file is looked at comes again while it is decoded
-    let over = false;
-    await eachLine(child.stderr, (text) => {
-      const line = readLogLine(text);
-      begun ||= text.includes('[info] Stream mapping:');
-      over ||= begun && line.kind === 'complaint';
-      if (line.kind === 'decoded' && !over) frames++;
-    });
+    const watch = new ComplaintWatch();
+    await eachLine(child.stderr, (text) => watch.see(text));
     await child.kill();
     signal.throwIfAborted();
-    return frames;
+    return watch.trustedFrames();
   }
 
-  return { name: backendName, version: found.version, describe, decode, framesBeforeComplaint };
+  const close = async () => {}; // nothing runs between decodings
+  return { name: backendName, version: found.version, describe, decode, framesBeforeComplaint, close };
 }
 
 const LOG = ['-loglevel', 'repeat+level+verbose'];
@@ -92,7 +87,7 @@ const SHOW = 'showinfo=checksum=0';
 
 /** Only formats that can be footage, only from files: never a playlist, a text drawn as pictures or an address. */
 function reading(input: FootageInput): string[] {
-  const common = ['-noautorotate', '-copyts', '-protocol_whitelist', 'file,pipe'];
+  const common = ['-noautorotate', '-copyts', '-protocol_whitelist', 'file,pipe', '-err_detect', CHECKS];
   const formats = ['-format_whitelist', READABLE_FORMATS];
   const source =
     input.kind === 'file' ? ['-i', `file:${input.path}`] : ['-f', 'concat', '-safe', '0', '-i', 'pipe:0'];

@@ -13,3 +13,6 @@ export const READABLE_FORMATS = [
   'png_pipe',
   'tiff_pipe',
 ].join(',');
+
+/** Check sums that a file carries (PNG, FFV1) are checked: libavcodec's `err_detect`. */
+export const CHECKS = 'crccheck';

@@ -2,7 +2,7 @@ import * as av from 'node-av';
 import type { StreamFacts } from './decoder.ts';
 import { quarterTurn } from './ffmpegFacts.ts';
 import { isSilentDamage } from './ffmpegLog.ts';
-import { READABLE_FORMATS } from './formats.ts';
+import { CHECKS, READABLE_FORMATS } from './formats.ts';
 import type { NodeAvMessage, NodeAvOrder } from './nodeAvMessages.ts';
 
 type Send = (message: NodeAvMessage, samples?: Uint8Array) => Promise<void>;
@@ -10,13 +10,17 @@ type Send = (message: NodeAvMessage, samples?: Uint8Array) => Promise<void>;
 /** What FFmpeg's libraries complained of, in order. */
 class Complaints {
   first: string | null = null;
+  /** Whether anything was said since this was last set to false. */
+  fresh = false;
   constructor() {
     av.Log.setLevel(av.AV_LOG_WARNING);
     const options = { maxLevel: av.AV_LOG_WARNING } as const;
     av.Log.setCallback((level, message) => this.hear(level, message.trim()), options);
   }
   hear(level: number, text: string): void {
-    if (level <= av.AV_LOG_ERROR || isSilentDamage(text)) this.first ??= text;
+    if (level > av.AV_LOG_ERROR && !isSilentDamage(text)) return;
+    this.first ??= text;
+    this.fresh = true;
   }
 }
 
@@ -32,8 +36,12 @@ export async function answerOrder(order: NodeAvOrder, send: Send): Promise<void>
   const complaints = new Complaints();
   const opened = await openVideo(order, complaints, send);
   if (opened === null) return;
-  if (order.task === 'describe') return await describe(opened, complaints, send);
-  await decode(opened, order, complaints, send);
+  try {
+    if (order.task === 'describe') await describe(opened, complaints, send);
+    else await decode(opened, order, complaints, send);
+  } finally {
+    await opened.format.closeInput();
+  }
 }
 
 async function openVideo(order: NodeAvOrder, complaints: Complaints, send: Send): Promise<Opened | null> {
@@ -42,6 +50,7 @@ async function openVideo(order: NodeAvOrder, complaints: Complaints, send: Send)
   const options: Record<string, string> = {
     format_whitelist: READABLE_FORMATS,
     protocol_whitelist: 'file,data',
+    err_detect: CHECKS,
   };
   const stills = order.script !== '';
   if (stills) options.safe = '0';
@@ -70,7 +79,7 @@ async function openDecoder({ stream }: Opened, threads: number): Promise<av.Code
   decoder.parametersToContext(stream.codecpar);
   decoder.pktTimebase = stream.timeBase;
   decoder.threadCount = threads;
-  return (await decoder.open2(codec)) < 0 ? null : decoder;
+  return (await decoder.open2(codec, av.Dictionary.fromObject({ err_detect: CHECKS }))) < 0 ? null : decoder;
 }
 
 /** FFmpeg's log reaches JavaScript by way of the event loop. */
@@ -78,40 +87,61 @@ function settle(): Promise<void> {
   return new Promise((resolve) => setImmediate(resolve));
 }
 
-/** Decoded frames in order of display; the frame is reused. Complaints made before a frame are known when it comes. */
+/** How far demuxer and decoder came before the first complaint of each. Only exact with one thread, and `careful`. */
+interface Before {
+  packets: number;
+  frames: number;
+  readonly careful: boolean;
+}
+
+/** A decoder that only ever fails must come to an end too. */
+const MOST_FAILURES_IN_A_ROW = 1000;
+
+/** Decoded frames in order of display; the frame is reused. */
 async function* decodedFrames(
   opened: Opened,
   decoder: av.CodecContext,
   complaints: Complaints,
-  careful: boolean,
+  before: Before,
 ): AsyncGenerator<av.Frame> {
   const packet = new av.Packet();
   packet.alloc();
   const frame = new av.Frame();
   frame.alloc();
+  let demuxerFailed = false;
+  let decoderFailed = false;
+  const complained = async () => {
+    if (before.careful) await settle();
+    const { fresh } = complaints;
+    complaints.fresh = false;
+    return fresh;
+  };
+  await complained();
   for (let atEnd = false; !atEnd; ) {
     const read = await opened.format.readFrame(packet);
     atEnd = read < 0;
     if (atEnd && read !== av.AVERROR_EOF) complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(read));
+    if (await complained()) demuxerFailed = true;
     if (!atEnd && packet.streamIndex !== opened.stream.index) {
       packet.unref();
       continue;
     }
+    if (!atEnd && !demuxerFailed) before.packets++;
     const sent = await decoder.sendPacket(atEnd ? null : packet);
     packet.unref();
     if (sent < 0) complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(sent));
-    if (careful) await settle();
-    for (;;) {
+    for (let failures = 0; failures < MOST_FAILURES_IN_A_ROW; ) {
       const got = await decoder.receiveFrame(frame);
-      if (careful) await settle();
-      if (got === av.AVERROR_EAGAIN || got === av.AVERROR_EOF) break;
-      if (got < 0) {
-        complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(got));
-        break;
-      }
-      if (frame.decodeErrorFlags !== 0 || frame.hasFlags(av.AV_FRAME_FLAG_CORRUPT)) {
+      const none = got === av.AVERROR_EAGAIN || got === av.AVERROR_EOF;
+      if (got < 0 && !none) complaints.hear(av.AV_LOG_ERROR, av.FFmpegError.strerror(got));
+      if (got >= 0 && (frame.decodeErrorFlags !== 0 || frame.hasFlags(av.AV_FRAME_FLAG_CORRUPT))) {
         complaints.hear(av.AV_LOG_ERROR, 'corrupt decoded frame');
       }
+      if (await complained()) decoderFailed = true;
+      if (none) break;
+      failures = got < 0 ? failures + 1 : 0;
+      if (got < 0) continue;
+      if (!decoderFailed) before.frames++;
       yield frame;
     }
   }
@@ -121,8 +151,9 @@ async function* decodedFrames(
 async function describe(opened: Opened, complaints: Complaints, send: Send): Promise<void> {
   const { format, stream, videoStreamCount } = opened;
   const decoder = await openDecoder(opened, 1);
+  const before = { packets: 0, frames: 0, careful: false };
   if (decoder !== null) {
-    for await (const frame of decodedFrames(opened, decoder, complaints, false)) {
+    for await (const frame of decodedFrames(opened, decoder, complaints, before)) {
       const rate = stream.avgFrameRate;
       const facts: StreamFacts = {
         codec: av.avGetCodecName(stream.codecpar.codecId) ?? 'unknown',
@@ -167,16 +198,14 @@ async function decode(opened: Opened, order: NodeAvOrder, complaints: Complaints
     await opened.format.seekFrame(index, BigInt(order.from.pts), av.AVSEEK_FLAG_BACKWARD);
   }
   await settle();
-  const onOpening = complaints.first;
-  if (careful) complaints.first = null; // what is complained of while the file is looked at comes again in decoding
+  complaints.fresh = false; // what is complained of while the file is looked at comes again while it is decoded
+  const before = { packets: 0, frames: 0, careful };
   const most = order.count ?? Number.POSITIVE_INFINITY;
-  const samplesOf = order.filter === 'extractplanes=y' ? new PlaneCopy() : new FilterChain(order.filter);
+  const samplesOf = FIRST_PLANE.has(order.filter) ? new PlaneCopy() : new FilterChain(order.filter);
   let sent = 0;
   let seen = 0;
-  let beforeComplaint = 0;
   let changed: string | null = null;
-  for await (const frame of decodedFrames(opened, decoder, complaints, careful)) {
-    if (complaints.first === null) beforeComplaint++;
+  for await (const frame of decodedFrames(opened, decoder, complaints, before)) {
     changed = changeOf(frame, order);
     if (changed !== null) break;
     const time = frame.bestEffortTimestamp;
@@ -188,7 +217,8 @@ async function decode(opened: Opened, order: NodeAvOrder, complaints: Complaints
     await send({ type: 'frame', pts, bidirectional }, samplesOf.read(frame));
     if (++sent >= most) break;
   }
-  await send({ type: 'end', complaint: complaints.first ?? onOpening, changed, beforeComplaint });
+  const beforeComplaint = Math.min(before.packets, before.frames);
+  await send({ type: 'end', complaint: complaints.first, changed, beforeComplaint });
 }
 
 function changeOf(frame: av.Frame, { expected }: NodeAvOrder): string | null {
@@ -200,7 +230,10 @@ function changeOf(frame: av.Frame, { expected }: NodeAvOrder): string | null {
   return name === expected.pixelFormat ? null : `pixel format changes to ${name}`;
 }
 
-/** The first plane's rows without their padding: for 8-bit planar formats the same as `extractplanes=y`. */
+/** Chains that give the first plane as it is, which can be had without a filter. */
+const FIRST_PLANE = new Set(['extractplanes=y', 'format=gray']);
+
+/** The first plane's rows without their padding. */
 class PlaneCopy {
   #out = new Uint8Array(0);
 

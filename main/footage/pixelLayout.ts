@@ -46,12 +46,11 @@ export function pixelLayout(pixelFormat: string): PixelLayout | null {
   if (!DEPTHS.has(bitDepth)) return null;
   const family = planar[1] ?? '';
   if (family.startsWith('gbr')) return rgbPlanar(bitDepth);
+  if (family === 'gray') return luma('grey', bitDepth, bitDepth === 8 ? 'format=gray' : `format=${name}le`);
   const rule = family.startsWith('yuv') ? 'coded' : 'grey';
-  return luma(
-    rule,
-    bitDepth,
-    bitDepth === 8 ? 'extractplanes=y' : `extractplanes=y,format=gray${bitDepth}le`,
-  );
+  if (bitDepth === 8) return luma(rule, 8, 'extractplanes=y');
+  const little = pixelFormat.endsWith('be') ? `format=${name}le,` : '';
+  return luma(rule, bitDepth, `${little}extractplanes=y,format=gray${bitDepth}le`);
 }
 
 /** Bytes of one frame as it travels. */

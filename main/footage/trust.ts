@@ -8,7 +8,7 @@ export interface Evidence {
   readonly decoded: number;
   readonly end: DecodeEnd;
   readonly claim: ContainerClaim;
-  /** Frames that came out before the first complaint; only looked at where there was one. */
+  /** See Decoder.framesBeforeComplaint; only looked at where there was a complaint. */
   readonly beforeComplaint: number;
   readonly pts: readonly (number | null)[];
   readonly reordered: boolean;
@@ -44,8 +44,8 @@ export function trust(evidence: Evidence): { frameCount: number; findings: reado
 function damageOf({ decoded, end, claim }: Evidence): string[] {
   const reasons: string[] = [];
   if (claim.missingBytes > 0) reasons.push(`the file ends ${claim.missingBytes} bytes early`);
-  if (end.complaint !== null) reasons.push(end.complaint);
-  if (end.changed === null && claim.frames !== null && decoded < claim.frames) {
+  if (end.complaint !== null) reasons.push(`the decoder says "${end.complaint}"`);
+  if (reasons.length === 0 && end.changed === null && claim.frames !== null && decoded < claim.frames) {
     reasons.push(`${claim.frames - decoded} frames are lost, or hidden by an edit list`);
   }
   return reasons;
