@@ -22,6 +22,11 @@ describe('electron-builder.yml', () => {
     await expect(validateConfiguration(wrong, new DebugLogger(false))).rejects.toThrow(/asarUnpak/);
   });
 
+  it('hands on no decoder library that may not be handed on', async () => {
+    const { files } = await configuration();
+    expect(String(files)).toMatch(/!node_modules\/\{node-av,@seydx,/);
+  });
+
   it('packs the Electron that the package names', async () => {
     expect((await configuration()).electronVersion).toBe(manifest.devDependencies.electron);
   });
