@@ -3,7 +3,7 @@ import { dirname, join, resolve } from 'node:path';
 import { type FileKind, fileKind } from '../hosts/fileKinds.ts';
 import { Refusal } from '../refusal.ts';
 
-export interface ListedFile {
+interface ListedFile {
   readonly name: string;
   readonly path: string;
   readonly kind: FileKind;

@@ -1,6 +1,6 @@
 /** What a file is picked or saved as. */
-export type OpenKind = 'footage' | 'sheet';
-export type SaveKind = 'sheet' | 'result';
+type OpenKind = 'footage' | 'sheet';
+type SaveKind = 'sheet' | 'result';
 
 /** What a host must offer. Without dialogs of its own the window shows the server-side file browser (GET /api/files). */
 export interface Shell {

@@ -13,7 +13,7 @@ export interface FakeOptions {
   readonly beforeFrame?: (n: number, signal: AbortSignal | undefined) => Promise<void>;
 }
 
-export const fakeSize = { widthPx: 4, heightPx: 3 } as const;
+const fakeSize = { widthPx: 4, heightPx: 3 } as const;
 
 export function fakeFootage(path: string, options: FakeOptions = {}): FakeFootage {
   const { frameCount = 5, bitDepth = 8, beforeFrame } = options;

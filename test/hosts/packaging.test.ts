@@ -24,7 +24,7 @@ describe('electron-builder.yml', () => {
 
   it('hands on no decoder library that may not be handed on', async () => {
     const { files } = await configuration();
-    expect(String(files)).toMatch(/!node_modules\/\{node-av,@seydx,/);
+    expect(JSON.stringify(files)).toMatch(/!node_modules\/\{node-av,@seydx,/);
   });
 
   it('packs the Electron that the package names', async () => {
