@@ -50,7 +50,10 @@ export function footageRoutes({ openFootage, dataFolder }: Services, opened: Ope
             2,
             `Frame ${n} is not in the footage; its last frame is ${index.frameCount - 1}.`,
           );
-        const picture = await source.frame(Number(n));
+        const picture = await source.frame(Number(n)).catch((error: unknown) => {
+          opened.get(id); // closed while the frame was on its way: that is the reason, and no defect
+          throw error;
+        });
         const display = c.req.valid('query').as === 'raw' ? null : displayBytes(picture);
         return c.body(display?.bytes ?? exactBytes(picture), 200, {
           'content-type': 'application/octet-stream',

@@ -9,6 +9,8 @@ export interface FakeOptions {
   readonly frameCount?: number;
   readonly bitDepth?: number;
   readonly pts?: readonly (number | null)[];
+  /** Waited for before each single frame. */
+  readonly beforeSingleFrame?: () => Promise<void>;
   /** Waited for before each frame of the index; rejects when the index is aborted. */
   readonly beforeFrame?: (n: number, signal: AbortSignal | undefined) => Promise<void>;
 }
@@ -54,7 +56,10 @@ export function fakeFootage(path: string, options: FakeOptions = {}): FakeFootag
     async *frames(first, last) {
       for (let n = first; n <= last; n++) yield { n, picture: picture(n) };
     },
-    frame: async (n) => picture(n),
+    async frame(n) {
+      await options.beforeSingleFrame?.();
+      return picture(n);
+    },
     async close() {
       source.closed = true;
     },

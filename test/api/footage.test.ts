@@ -1,4 +1,4 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, vi } from 'vitest';
 import type { FootageEvent } from '../../main/api/footageEvents.ts';
 import { Refusal } from '../../main/refusal.ts';
 import { allEvents, eventLines } from './eventLines.ts';
@@ -181,5 +181,20 @@ describe('GET /api/footage/:id/frames/:n', () => {
     const { footageId } = await open('/1.mp4');
     const error = await errorOf(await get(app, `/api/footage/${footageId}/frames/${n}`));
     expect(error).toEqual({ status: 400, code, message });
+  });
+
+  it('says that the footage was closed when that happens while a frame is on its way', async () => {
+    let fail: ((error: Error) => void) | null = null;
+    const beforeSingleFrame = () =>
+      new Promise<void>((_, reject) => {
+        fail = reject;
+      });
+    const { app, open } = footageApp({ beforeSingleFrame });
+    const { footageId } = await open('/1.mp4');
+    const answer = get(app, `/api/footage/${footageId}/frames/0`);
+    const end = await vi.waitUntil(() => fail); // the frame is on its way
+    await request(app, `/api/footage/${footageId}`, { method: 'DELETE' });
+    end(new Error('the decoder was ended'));
+    expect(await errorOf(await answer)).toMatchObject({ status: 400, code: 'footageNotOpen' });
   });
 });
