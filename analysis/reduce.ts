@@ -1,5 +1,5 @@
 import { rowTime } from './clock/rowTime.ts';
-import { numbers } from './motion/numbers.ts';
+import { numbers } from './keyValues/numbers.ts';
 import type { WorldTrack } from './motion/worldTrack.ts';
 import { type Calibration, calibrate } from './scale/calibrate.ts';
 import { settle } from './sheet/assumptions.ts';
@@ -30,17 +30,7 @@ export function reduce(input: ReduceInput): Result {
 
   const calibration = calibrate(sheet, settled, originOf(sheet, tracks));
   const worldTracks = tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
-  const g = sheet.site === undefined ? null : siteGravity(sheet.site);
-  const noSite: Finding[] =
-    g === null
-      ? [
-          {
-            level: 'caution',
-            code: 'siteMissing',
-            text: 'The site is not stated: theory and gravity check rest on standard gravity, uncertain by 0.015 m/s².',
-          },
-        ]
-      : [];
+  const gravity = siteGravity(sheet.site);
 
   const derived = numbers({
     tracks: worldTracks,
@@ -52,9 +42,8 @@ export function reduce(input: ReduceInput): Result {
       exposureS: settled.exposureS,
       metrePerPx: calibration.metrePerPx,
     },
-    g,
+    gravity,
     sheet,
-    footageEndsAtFrame: Math.max(...tracks.map((t) => t.frame[t.frame.length - 1] ?? 0)),
   });
   const decided = verdicts(sheet.limits, derived.keyValues);
 
@@ -71,13 +60,20 @@ export function reduce(input: ReduceInput): Result {
       ...input.findings,
       ...checkSheet(sheet),
       ...settled.findings,
-      ...noSite,
+      ...siteFindings(sheet),
       ...calibration.findings,
       ...trackFindings(tracks, sheet.bodies),
       ...derived.findings,
       ...decided.findings,
     ],
   };
+}
+
+function siteFindings(sheet: Sheet): Finding[] {
+  if (sheet.site !== undefined) return [];
+  const text =
+    'The site is not stated: theory and gravity check rest on standard gravity, uncertain by 0.02 m/s². State site.gMps2, or site.latitudeDeg and heightM.';
+  return [{ level: 'caution', code: 'siteMissing', text }];
 }
 
 /** The world's origin: as stated, else where the tip starts, else the first body. */

@@ -14,7 +14,16 @@ export function accelerationBandwidth(halfWindowS: number, frameTimeS: number, d
   const u = new Float64Array(n).fill(1);
   const response = (frequencyHz: number): number => {
     const omega = 2 * Math.PI * frequencyHz;
-    const fit = polynomialFit(timeS, timeS.map((t) => Math.cos(omega * t)), u, 0, n, 0, m * frameTimeS, degree);
+    const fit = polynomialFit(
+      timeS,
+      timeS.map((t) => Math.cos(omega * t)),
+      u,
+      0,
+      n,
+      0,
+      m * frameTimeS,
+      degree,
+    );
     if (!fit) return 1;
     return (2 * fit.coefficients[2]) / (m * frameTimeS) ** 2 / (-omega * omega);
   };

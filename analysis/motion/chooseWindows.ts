@@ -32,7 +32,12 @@ export function chooseWindows(
   const n = timeS.length;
   const { from, to } = segment;
   const blank = () => new Float64Array(n).fill(Number.NaN);
-  const chosen = { halfWindowS: blank(), biasAcceleration: blank(), biasVelocity: blank(), biasPosition: blank() };
+  const chosen = {
+    halfWindowS: blank(),
+    biasAcceleration: blank(),
+    biasVelocity: blank(),
+    biasPosition: blank(),
+  };
   const best = new Float64Array(n).fill(Number.POSITIVE_INFINITY);
 
   for (const halfS of ladder(timeS, degree, segment)) {
@@ -74,7 +79,12 @@ function ladder(timeS: Float64Array, degree: number, { from, to }: { from: numbe
   return windows;
 }
 
-function averaged(timeS: Float64Array, values: Float64Array, reachS: number, { from, to }: { from: number; to: number }): Float64Array {
+function averaged(
+  timeS: Float64Array,
+  values: Float64Array,
+  reachS: number,
+  { from, to }: { from: number; to: number },
+): Float64Array {
   const out = new Float64Array(values.length).fill(Number.NaN);
   const sums = new Float64Array(to - from + 1);
   const counts = new Float64Array(to - from + 1);

@@ -13,7 +13,13 @@ export interface Derivatives {
 }
 
 /** The windows of a segment: for each point the first and (exclusive) last index that counts. */
-export function windowOf(timeS: Float64Array, i: number, halfWindowS: number, from: number, to: number): [number, number] {
+export function windowOf(
+  timeS: Float64Array,
+  i: number,
+  halfWindowS: number,
+  from: number,
+  to: number,
+): [number, number] {
   // Half a nanosecond of slack: windows of whole frame times must not depend on rounding.
   const slack = 5e-10;
   let a = i;
@@ -42,7 +48,8 @@ export function localPolynomial(
   segment: { readonly from: number; readonly to: number },
 ): Derivatives {
   const n = timeS.length;
-  if (yM.length !== n || uYM.length !== n || halfWindowS.length !== n) throw new RangeError('localPolynomial: lengths differ');
+  if (yM.length !== n || uYM.length !== n || halfWindowS.length !== n)
+    throw new RangeError('localPolynomial: lengths differ');
   const blank = () => new Float64Array(n).fill(Number.NaN);
   const out: Derivatives = {
     position: blank(),
@@ -54,7 +61,8 @@ export function localPolynomial(
     leverage: blank(),
   };
   for (let i = segment.from; i < segment.to; i++) {
-    if (i > segment.from && !(timeS[i] > timeS[i - 1])) throw new RangeError('localPolynomial: times do not increase');
+    if (i > segment.from && !(timeS[i] > timeS[i - 1]))
+      throw new RangeError('localPolynomial: times do not increase');
     const [a, b] = windowOf(timeS, i, halfWindowS[i], segment.from, segment.to);
     const span = Math.max(timeS[i] - timeS[a], timeS[b - 1] - timeS[i]);
     const fit = span > 0 ? polynomialFit(timeS, yM, uYM, a, b, timeS[i], span, degree) : null;

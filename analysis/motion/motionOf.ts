@@ -38,7 +38,11 @@ export function segmentsOf(timeS: Float64Array, breaksS: readonly number[]): Seg
  *
  * @param breaksS  times that no window may cross [s]
  */
-export function motionOf(track: WorldTrack, breaksS: readonly number[], frameTimeS: number): MotionWithWindows {
+export function motionOf(
+  track: WorldTrack,
+  breaksS: readonly number[],
+  frameTimeS: number,
+): MotionWithWindows {
   const n = track.timeS.length;
   const blank = () => new Float64Array(n).fill(Number.NaN);
   const series = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
@@ -67,7 +71,9 @@ export function motionOf(track: WorldTrack, breaksS: readonly number[], frameTim
     }
   }
 
-  const known = Array.from(track.timeS.keys()).filter((i) => Number.isFinite(series.ay[i]) && Number.isFinite(series.ax[i]));
+  const known = Array.from(track.timeS.keys()).filter(
+    (i) => Number.isFinite(series.ay[i]) && Number.isFinite(series.ax[i]),
+  );
   const pick = (values: Float64Array) => known.map((i) => values[i]);
   const windowsMs = pick(halfWindowS).map((h) => h * 1000);
   return {

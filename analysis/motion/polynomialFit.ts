@@ -41,7 +41,8 @@ export function polynomialFit(
   const covariance = inverse(normal, terms);
   if (!covariance) return null;
   const coefficients = new Float64Array(terms);
-  for (let a = 0; a < terms; a++) for (let b = 0; b < terms; b++) coefficients[a] += covariance[a * terms + b] * right[b];
+  for (let a = 0; a < terms; a++)
+    for (let b = 0; b < terms; b++) coefficients[a] += covariance[a * terms + b] * right[b];
   return { coefficients, covariance };
 }
 

@@ -1,3 +1,4 @@
+import { quantities, unitOfQuantity } from '../verdict/quantities.ts';
 import type { Finding } from './result.ts';
 import type { Sheet } from './sheet.ts';
 
@@ -84,5 +85,19 @@ export function checkSheet(sheet: Sheet): Finding[] {
   if (tether && !bodies.some((b) => b.role === 'tip')) {
     caution('tipMissing', 'A tether is stated but no body is the tip: nothing can be said of the tether.');
   }
+  sheet.limits.forEach((limit, i) => {
+    const unit = unitOfQuantity(limit.quantity);
+    if (unit === undefined) {
+      stop(
+        'limitUnknown',
+        `limits[${i}]: there is no quantity "${limit.quantity}"; it can be ${quantities.map((q) => q.quantity).join(', ')}.`,
+      );
+    } else if (limit.unit !== unit) {
+      stop(
+        'limitUnit',
+        `limits[${i}]: ${limit.quantity} is in ${unit}, but its limit is stated in ${limit.unit}; convert the limit.`,
+      );
+    }
+  });
   return findings;
 }

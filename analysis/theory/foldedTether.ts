@@ -1,7 +1,7 @@
 import { type Curve, emptyCurve } from './curve.ts';
 
 /** Time to extension in units of √(L/g), energy form, zero separation: (2π)^(3/2)/Γ(1/4)² (Calkin & March 1989). */
-export const energyExtensionTime = 1.1981402347355922;
+export const energyExtensionTime = 1.198140234735592;
 /** The same in momentum form: the tip falls freely through L. */
 export const momentumExtensionTime = Math.SQRT2;
 
@@ -9,7 +9,11 @@ export const momentumExtensionTime = Math.SQRT2;
 const lastShare = 0.999;
 
 /** Tip speed and acceleration after falling the share s of the length, energy form: v² = gL s(2-s)/(1-s), a = g(1 + (1-s)^-2)/2. */
-export function energyForm(s: number, lengthM: number, gMps2: number): { speedMps: number; accelerationMps2: number } {
+export function energyForm(
+  s: number,
+  lengthM: number,
+  gMps2: number,
+): { speedMps: number; accelerationMps2: number } {
   return {
     speedMps: Math.sqrt((gMps2 * lengthM * s * (2 - s)) / (1 - s)),
     accelerationMps2: (gMps2 / 2) * (1 + 1 / (1 - s) ** 2),
@@ -50,13 +54,21 @@ export function energyShare(time: number): number {
     const f = (x: number) => Math.sqrt(Math.max(0, Math.cos(x)));
     const a = low * h;
     const part = ((theta - a) / 6) * (f(a) + 4 * f((a + theta) / 2) + f(theta));
-    theta = Math.min((low + 1) * h, Math.max(a, theta + (time - times[low] - part) / Math.max(f(theta), 1e-3)));
+    theta = Math.min(
+      (low + 1) * h,
+      Math.max(a, theta + (time - times[low] - part) / Math.max(f(theta), 1e-3)),
+    );
   }
   return 1 - Math.cos(theta);
 }
 
 /** Folded tether, one end fixed, released from rest beside it, no energy lost at the fold; ends when the tether is straight. */
-export function foldedTetherEnergy(timeS: Float64Array, releaseS: number, lengthM: number, gMps2: number): Curve {
+export function foldedTetherEnergy(
+  timeS: Float64Array,
+  releaseS: number,
+  lengthM: number,
+  gMps2: number,
+): Curve {
   const unitS = Math.sqrt(lengthM / gMps2);
   return untilExtension(timeS, releaseS, energyExtensionTime * unitS, (t) => {
     const s = Math.min(energyShare(t / unitS), lastShare);
@@ -66,7 +78,12 @@ export function foldedTetherEnergy(timeS: Float64Array, releaseS: number, length
 }
 
 /** The same with all of the fold's impact lost (momentum form): the tip falls freely, until it has fallen the length. */
-export function foldedTetherMomentum(timeS: Float64Array, releaseS: number, lengthM: number, gMps2: number): Curve {
+export function foldedTetherMomentum(
+  timeS: Float64Array,
+  releaseS: number,
+  lengthM: number,
+  gMps2: number,
+): Curve {
   return untilExtension(timeS, releaseS, momentumExtensionTime * Math.sqrt(lengthM / gMps2), (t) => [
     -0.5 * gMps2 * t * t,
     -gMps2 * t,

@@ -17,14 +17,22 @@ const longestStepS = 0.002;
  * @param timeS      ascending
  * @param dragShare  factor on C_d, for the sensitivity of a result to it
  */
-export function freeFallDrag(timeS: Float64Array, releaseS: number, gMps2: number, sphere: Sphere, air: Air, dragShare = 1): Curve {
+export function freeFallDrag(
+  timeS: Float64Array,
+  releaseS: number,
+  gMps2: number,
+  sphere: Sphere,
+  air: Air,
+  dragShare = 1,
+): Curve {
   const area = (Math.PI / 4) * sphere.diameterM ** 2;
   const displacedKg = (air.densityKgpm3 * Math.PI * sphere.diameterM ** 3) / 6;
   const inertiaKg = sphere.massKg + displacedKg / 2;
   const pull = ((sphere.massKg - displacedKg) * gMps2) / inertiaKg;
-  const reynoldsPerMps = (air.densityKgpm3 * sphere.diameterM) / air.viscosityPaS;
+  const reynoldsPerMps = (air.densityKgpm3 * sphere.diameterM) / air.viscosityPas;
   const dragPer = (dragShare * air.densityKgpm3 * area) / (2 * inertiaKg);
-  const acceleration = (v: number) => pull - dragPer * sphereDrag(reynoldsPerMps * Math.abs(v)) * v * Math.abs(v);
+  const acceleration = (v: number) =>
+    pull - dragPer * sphereDrag(reynoldsPerMps * Math.abs(v)) * v * Math.abs(v);
 
   const curve = emptyCurve(timeS);
   let t = releaseS;

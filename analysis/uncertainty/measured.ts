@@ -1,25 +1,16 @@
 import type { KeyValue } from '../sheet/result.ts';
+import { type Contribution, combined, effectiveDof } from './effectiveDof.ts';
 import { studentT } from './studentT.ts';
 
-/** One contribution to a value's uncertainty. */
-export interface Contribution {
-  readonly source: string;
-  /** Standard uncertainty it gives to the value, in the value's unit; its sign does not matter. */
-  readonly u: number;
-  /** Degrees of freedom; left out: unlimited (type B). */
-  readonly dof?: number;
-}
-
-/** Effective degrees of freedom by Welch and Satterthwaite (JCGM 100:2008, G.4.1, eq. G.2b). */
-export function effectiveDof(contributions: readonly Contribution[]): number {
-  const u2 = contributions.reduce((s, c) => s + c.u * c.u, 0);
-  const sum = contributions.reduce((s, c) => s + (c.dof === undefined ? 0 : c.u ** 4 / c.dof), 0);
-  return sum === 0 ? Number.POSITIVE_INFINITY : (u2 * u2) / sum;
-}
+/** Beyond this a coverage factor differs from the normal one by less than 0.02 %. */
+const unlimitedDof = 5000;
 
 /**
- * A value with its budget: independent contributions combined as the root of their squares (JCGM 100:2008, 5.1.2), expanded
- * for 95 % by Student's t with the effective degrees of freedom truncated to a whole number (G.4.1).
+ * A measured value with its budget: combined standard uncertainty (root sum of squares), effective degrees of freedom
+ * (truncated to a whole number as JCGM 100:2008, G.4.2 asks; null when unlimited) and expanded uncertainty at 95 %.
+ *
+ * @param contributions  independent sources, each with its standard uncertainty in the unit of the value
+ * @throws RangeError if the value or an uncertainty is not finite, or an uncertainty is negative
  */
 export function measured(
   quantity: string,
@@ -28,18 +19,26 @@ export function measured(
   contributions: readonly Contribution[],
   extras: { readonly bandwidthHz?: number; readonly definition?: string } = {},
 ): KeyValue {
-  const u = Math.sqrt(contributions.reduce((s, c) => s + c.u * c.u, 0));
-  const dof = effectiveDof(contributions);
-  const k = studentT(Number.isFinite(dof) ? Math.max(1, Math.floor(dof)) : dof, 0.95);
+  if (!Number.isFinite(value)) throw new RangeError(`measured: ${quantity} is ${value}`);
+  for (const c of contributions) {
+    if (!(Number.isFinite(c.u) && c.u >= 0)) {
+      throw new RangeError(`measured: ${quantity}, ${c.source}: standard uncertainty ${c.u}`);
+    }
+  }
+  const u = combined(contributions);
+  const nu = effectiveDof(contributions);
+  const dof = nu === null || nu > unlimitedDof ? null : Math.max(1, Math.floor(nu));
+  const k = studentT(dof);
   return {
     quantity,
     value,
     u,
     unit,
-    dof: Number.isFinite(dof) ? dof : null,
+    dof,
     U95: k * u,
     k,
-    ...extras,
-    budget: contributions.map((c) => ({ source: c.source, u: Math.abs(c.u) })).filter((c) => c.u > 0),
+    ...(extras.bandwidthHz === undefined ? {} : { bandwidthHz: extras.bandwidthHz }),
+    ...(extras.definition === undefined ? {} : { definition: extras.definition }),
+    budget: contributions.filter((c) => c.u > 0).map((c) => ({ source: c.source, u: c.u })),
   };
 }

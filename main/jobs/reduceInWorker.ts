@@ -1,9 +1,8 @@
-import { Worker } from 'node:worker_threads';
 import type { Result } from '../../analysis/sheet/result.ts';
-import { entryPoint } from '../entryPoint.ts';
 import { Refusal } from '../refusal.ts';
 import type { Progress } from './progress.ts';
 import type { ReduceOrder } from './reduce.ts';
+import { startWorker } from './startWorker.ts';
 import type { FromWorker, ToWorker } from './workerMessages.ts';
 
 /** A worker that was told to stop gets this long to end its decoder before the thread is ended. */
@@ -20,8 +19,7 @@ export function reduceInWorker(
 ): Promise<Result> {
   const { signal, onProgress } = options;
   if (signal?.aborted) return Promise.reject(cancelled());
-  const { url, execArgv } = entryPoint('reduceWorker', import.meta.url);
-  const worker = new Worker(url, { workerData: order, execArgv });
+  const worker = startWorker('reduceWorker', import.meta.url, order);
   let impatient: NodeJS.Timeout | undefined;
 
   return new Promise<Result>((resolve, reject) => {
