@@ -10,22 +10,21 @@ import { Refusal } from '../refusal.ts';
  * @throws Refusal (status 2) when the folder is missing or may not be written
  */
 export async function saveSheet(path: string, sheet: Sheet): Promise<void> {
-  const folder = dirname(path);
-  if ((await stat(path).catch(() => null))?.isDirectory())
-    throw new Refusal('sheetNotSaved', 2, `Sheet ${path} is a folder; give a file name as well.`);
-  const arriving = join(folder, `.${basename(path)}.${randomUUID()}`);
+  const arriving = join(dirname(path), `.${basename(path)}.${randomUUID()}`);
   try {
     await writeFile(arriving, `${JSON.stringify(sheet, null, 2)}\n`, { flag: 'wx' });
     await rename(arriving, path);
   } catch (error) {
-    await rm(arriving, { force: true });
-    throw new Refusal('sheetNotSaved', 2, `Sheet ${path} cannot be saved: ${why(error, folder)}.`, {
-      cause: error,
-    });
+    await rm(arriving, { force: true }).catch(() => {}); // where nothing could be written, nothing is to be removed
+    const reason = await why(error, path);
+    throw new Refusal('sheetNotSaved', 2, `Sheet ${path} cannot be saved: ${reason}.`, { cause: error });
   }
 }
 
-function why(error: unknown, folder: string): string {
+async function why(error: unknown, path: string): Promise<string> {
+  // Each system has its own code for a file that would replace a folder.
+  if ((await stat(path).catch(() => null))?.isDirectory()) return 'it is a folder; give a file name as well';
+  const folder = dirname(path);
   const code = (error as NodeJS.ErrnoException).code;
   if (code === 'ENOENT' || code === 'ENOTDIR') return `there is no folder ${folder}`;
   if (code === 'EACCES' || code === 'EPERM' || code === 'EROFS')

@@ -36,7 +36,6 @@ export async function startLoopback(options: {
   const { app, port = 0 } = options;
   const server = createAdaptorServer({
     fetch: (request) => guard.answer(request) ?? app.handle(request),
-    hostname: address,
     overrideGlobalObjects: false, // other hosts expect the genuine Request and Response
   }) as Server;
   server.listen(port, address);

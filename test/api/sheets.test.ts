@@ -85,14 +85,16 @@ describe('POST /api/sheets/save', () => {
 
   it.each([
     ['in a folder that is missing', 'missing/drop.json', /there is no folder/],
+    ['below a file', 'a.txt/drop.json', /there is no folder/],
     ['as a folder', 'sub', /is a folder/],
   ])('refuses to save %s and leaves nothing behind', async (_, name, message) => {
     const folder = testFolder();
     mkdirSync(join(folder, 'sub'));
+    writeFileSync(join(folder, 'a.txt'), '');
     const error = await errorOf(await save(join(folder, name), sheetExample(), folder));
     expect(error).toMatchObject({ status: 400, code: 'sheetNotSaved' });
     expect(error.message).toMatch(message);
-    expect(readdirSync(folder)).toEqual(['sub']);
+    expect(readdirSync(folder)).toEqual(['a.txt', 'sub']);
   });
 
   it('keeps the way to the footage when a sheet is saved elsewhere', async () => {
