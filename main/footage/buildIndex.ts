@@ -49,7 +49,9 @@ export async function buildIndex(
   const end = step.value;
   const beforeComplaint = end.complaint === null ? 0 : await decoder.framesBeforeComplaint(order);
   const { name } = input;
-  const trusted = trust({ name, decoded: pts.length, end, claim, beforeComplaint, pts, reordered });
+  const stills = input.kind === 'stills';
+  const decoded = pts.length;
+  const trusted = trust({ name, decoded, end, claim, beforeComplaint, stills, pts, reordered });
   if (trusted.frameCount === 0) {
     const why = trusted.findings.map((finding) => finding.text).join('; ') || 'none can be decoded';
     const message = `${name}: no frame can be trusted (${why}); copy the footage from the camera again`;

@@ -107,7 +107,7 @@ class DecodedFootage implements FrameSource {
   async frame(n: number, signal?: AbortSignal): Promise<Picture> {
     if (!Number.isInteger(n) || n < 0) throw new RangeError(`${this.path}: ${n} is no frame number`);
     const block = Math.floor(n / this.#blockFrames);
-    if (this.#index !== null && n >= this.#index.frameCount) throw this.#beyond(n, this.#index.frameCount);
+    if (this.#index !== null && n >= this.#index.frameCount) throw this.#beyond(n, this.#index);
     while (!this.#cache.has(block)) {
       if (this.#loading !== null && this.#loading.block !== block) this.#loading.controller.abort();
       this.#loading ??= this.#load(block);
@@ -115,7 +115,8 @@ class DecodedFootage implements FrameSource {
     }
     const pictures = this.#cache.get(block) ?? [];
     const picture = pictures[n - block * this.#blockFrames];
-    if (picture === undefined) throw this.#beyond(n, block * this.#blockFrames + pictures.length);
+    if (picture === undefined)
+      throw this.#beyond(n, await this.index(signal === undefined ? {} : { signal }));
     this.#loadAhead(n, block);
     return { ...picture, luma: picture.luma.slice() };
   }
@@ -170,7 +171,7 @@ class DecodedFootage implements FrameSource {
     this.#cache.put(block, pictures);
   }
 
-  #beyond(n: number, frameCount: number): Refusal {
+  #beyond(n: number, { frameCount }: FootageIndex): Refusal {
     const message = `${this.path}: there is no frame ${n}; the footage has ${frameCount} frames, from 0 on`;
     return new Refusal('frameBeyondFootage', 3, message);
   }

@@ -42,7 +42,8 @@ export async function* frameStream(order: StreamOrder): AsyncGenerator<NumberedP
     }
   }
   if (Number.isFinite(order.last) && next <= order.last) {
-    const message = `${order.name}: there is no frame ${order.last}; the footage has ${next} frames, from 0 on`;
+    const end = next > order.first ? `ends with frame ${next - 1}` : `ends before frame ${next}`;
+    const message = `${order.name}: there is no frame ${order.last}; the footage ${end}`;
     throw new Refusal('frameBeyondFootage', 3, message);
   }
 }

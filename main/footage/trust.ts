@@ -10,6 +10,8 @@ export interface Evidence {
   readonly claim: ContainerClaim;
   /** See Decoder.framesBeforeComplaint; only looked at where there was a complaint. */
   readonly beforeComplaint: number;
+  /** Each frame is a file of its own. */
+  readonly stills: boolean;
   readonly pts: readonly (number | null)[];
   readonly reordered: boolean;
 }
@@ -17,14 +19,20 @@ export interface Evidence {
 /** H.264 and HEVC hold back at most 16 pictures for reordering. */
 const DEEPEST_REORDER = 16;
 
+/** Wrong bytes are often decoded for a while before a decoder notices: so many frames before its complaint are not trusted. */
+const NOTICED_LATE = 8;
+
 /**
- * How many frames can be trusted: those before the first error, since later ones may be predicted from what was lost. The
- * decoded count is held against the container's claims, because damage is often silent.
+ * How many frames can be trusted: those before the first error, since later ones may be predicted from what was lost. No rule
+ * finds wrong bytes that decode without complaint (uncompressed pictures, some MJPEG). The decoded count is held against the container's claims, because damage is often silent.
  */
 export function trust(evidence: Evidence): { frameCount: number; findings: readonly Finding[] } {
   const { name, decoded, end, claim } = evidence;
   const reasons = damageOf(evidence);
   let frameCount = end.complaint === null ? decoded : Math.min(decoded, evidence.beforeComplaint);
+  // a file that is only cut is right up to the cut
+  const wrongBytes = end.complaint !== null && claim.missingBytes === 0 && !evidence.stills;
+  if (wrongBytes) frameCount = Math.max(0, frameCount - NOTICED_LATE);
   if (reasons.length > 0 && evidence.reordered) {
     frameCount = beforeHole(evidence.pts.slice(0, frameCount));
   }
@@ -35,7 +43,7 @@ export function trust(evidence: Evidence): { frameCount: number; findings: reado
   }
   if (reasons.length > 0) {
     const of = claim.frames === null ? `${decoded} decoded` : `${claim.frames} listed`;
-    const text = `${name}: damaged (${reasons.join('; ')}): ${frameCount} of ${of} frames can be trusted, those before the first error`;
+    const text = `${name}: damaged (${reasons.join('; ')}): ${frameCount} of ${of} frames can be trusted, those ${wrongBytes ? 'well ' : ''}before the first error`;
     findings.push({ level: 'caution', code: 'footageDamaged', text });
   }
   return { frameCount, findings };
