@@ -1,0 +1,34 @@
+import type { Plugin } from 'chart.js';
+
+/** Writes each curve's letter at its last point inside the lane, so that no curve is told by colour alone. */
+export const letterPlugin: Plugin = {
+  id: 'curveLetters',
+  afterDatasetsDraw(chart) {
+    const { ctx, chartArea, data } = chart;
+    ctx.save();
+    ctx.font = '600 11px system-ui, sans-serif';
+    ctx.textBaseline = 'middle';
+    const taken: number[] = [];
+    data.datasets.forEach((dataset, i) => {
+      const letter = dataset.label;
+      if (!letter) return;
+      const points = chart.getDatasetMeta(i).data;
+      const inside = points.filter(
+        ({ x, y }) =>
+          x >= chartArea.left && x <= chartArea.right && y >= chartArea.top && y <= chartArea.bottom,
+      );
+      const last = inside.at(-1);
+      if (!last) return;
+      let x = Math.min(last.x, chartArea.right - 12);
+      while (taken.some((other) => Math.abs(other - x) < 11)) x -= 12;
+      taken.push(x);
+      const at = inside.reduce((best, p) => (Math.abs(p.x - x) < Math.abs(best.x - x) ? p : best), last);
+      ctx.lineWidth = 3;
+      ctx.strokeStyle = '#fff';
+      ctx.strokeText(letter, x, at.y - 8);
+      ctx.fillStyle = String(dataset.borderColor);
+      ctx.fillText(letter, x, at.y - 8);
+    });
+    ctx.restore();
+  },
+};

@@ -1,0 +1,15 @@
+import type { Theory } from '../../analysis/sheet/result.ts';
+
+/** A model in words, with the letter and the dashes that it has in the lanes. */
+export const theoryNames: Readonly<
+  Record<
+    Theory['model'],
+    { readonly text: string; readonly letter: string; readonly dash: readonly number[] }
+  >
+> = {
+  freeFall: { text: 'free fall', letter: 'F', dash: [1, 3] },
+  freeFallDrag: { text: 'free fall with drag', letter: 'D', dash: [8, 3, 1, 3] },
+  foldedTetherEnergy: { text: 'folded tether, energy form', letter: 'E', dash: [10, 4] },
+  foldedTetherMomentum: { text: 'folded tether, momentum form', letter: 'M', dash: [3, 3] },
+  linkedTether: { text: 'linked tether', letter: 'L', dash: [12, 3, 2, 3] },
+};

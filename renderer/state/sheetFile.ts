@@ -1,0 +1,66 @@
+import { signal } from '@preact/signals';
+import type { SheetInput } from '../../analysis/sheet/sheet.ts';
+import { answered, api, lineOf } from './api.ts';
+import { missingIsShown } from './check.ts';
+import { draft, emptyDraft, replaceDraft, sheetFolder, sheetPath } from './draft.ts';
+import { draftOf, sheetJson } from './draftSheet.ts';
+import { afterLeaving, carriedOver, show, wholePath } from './drop.ts';
+import { footage, loadFootage } from './footage.ts';
+import { reduceProblem, reduction } from './reduction.ts';
+
+export const sheetProblem = signal<string | null>(null);
+export const sheetNote = signal<string | null>(null);
+
+/** Opens a sheet file and the footage that it names. */
+export function openSheet(path: string): void {
+  afterLeaving(async () => {
+    sheetNote.value = null;
+    try {
+      const opened = await answered(api.sheets.open.$post({ json: { path } }));
+      replaceDraft(draftOf(opened.sheet));
+      sheetFolder.value = opened.folder;
+      sheetPath.value = opened.path;
+      sheetProblem.value = null;
+      carriedOver.value = null;
+      reduction.value = null;
+      reduceProblem.value = null;
+      show(await loadFootage(wholePath(opened.sheet.footage.path)));
+    } catch (error) {
+      sheetProblem.value = lineOf(error);
+    }
+  });
+}
+
+/** Saves the sheet as it stands; paths below its folder become relative to it. */
+export async function saveSheetAs(path: string): Promise<void> {
+  const withEnding = /\.json$/i.test(path) ? path : `${path}.json`;
+  try {
+    const sheet = sheetJson(draft.value) as unknown as SheetInput; // the program checks it
+    const saved = await answered(
+      api.sheets.save.$post({ json: { path: withEnding, sheet, folder: sheetFolder.value } }),
+    );
+    sheetFolder.value = saved.folder;
+    sheetPath.value = saved.path;
+    draft.value = { ...draft.value, footage: saved.sheet.footage };
+    sheetProblem.value = null;
+    sheetNote.value = `Saved as ${saved.path}`;
+  } catch (error) {
+    sheetProblem.value = lineOf(error);
+  }
+}
+
+/** Starts a sheet from nothing on the footage that is open. */
+export function newSheet(): void {
+  afterLeaving(() => {
+    const path = footage.value?.path;
+    replaceDraft({ ...emptyDraft, footage: path === undefined ? {} : { path } });
+    sheetFolder.value = null;
+    sheetPath.value = null;
+    sheetProblem.value = null;
+    sheetNote.value = null;
+    carriedOver.value = null;
+    reduction.value = null;
+    reduceProblem.value = null;
+    missingIsShown.value = false;
+  });
+}
