@@ -16,6 +16,8 @@ export interface Cuttings {
   /** Keeps the part of frame n around (xPx, yPx), as long as there is room. */
   keep(n: number, picture: Picture, brightness: number, xPx: number, yPx: number): void;
   /** The kept cuttings that belong to measured sightings, each with the sighting's index. */
+  /** Takes pixels of the frame (1 in `mask`, side × side about a whole pixel) out of every kept plate. */
+  disregard(centreX: number, centreY: number, side: number, mask: Uint8Array): void;
   of(sightings: readonly { readonly n: number; readonly state: string }[]): [number, Cutting][];
 }
 
@@ -55,6 +57,18 @@ export function startCuttings(half: number, plate: Plate | null): Cuttings {
         left,
         top,
       });
+    },
+    disregard(centreX, centreY, side, mask) {
+      const reach = (side - 1) / 2;
+      for (const { plate: part, left, top } of kept.values()) {
+        if (!part) continue;
+        for (let u = 0; u < mask.length; u++) {
+          const x = centreX - reach + (u % side) - left;
+          const y = centreY - reach + Math.floor(u / side) - top;
+          if (mask[u] === 1 && x >= 0 && y >= 0 && x < part.widthPx && y < part.heightPx)
+            part.level[y * part.widthPx + x] = Number.NaN;
+        }
+      }
     },
     of(sightings) {
       return sightings.flatMap((s, i): [number, Cutting][] => {

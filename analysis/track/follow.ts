@@ -1,8 +1,9 @@
 import type { BodyState } from '../sheet/result.ts';
 import { blurModel } from './blur.ts';
 import { startCuttings } from './cuttings.ts';
-import { makeLayer } from './layer.ts';
-import type { StillBody } from './learnBody.ts';
+import { hiddenAtRest } from './hidden.ts';
+import { makeLayer, REACH } from './layer.ts';
+import { cutPlate, type StillBody } from './learnBody.ts';
 import { startLearner } from './learner.ts';
 import { type BodyModel, type Match, makeMatcher, type Plate } from './match.ts';
 import { cutOut, roundMask } from './patchModel.ts';
@@ -206,6 +207,19 @@ export function startFollower(
         }
         learner?.conclude();
         model = learner?.model() ?? model;
+        const rest = sightings.slice(0, still.frames).filter((s) => s.state === 'measured');
+        if (usedPlate && rest.length > 0) {
+          const behind = cutPlate(usedPlate, centreX, centreY, half + REACH);
+          const mean = (of: (s: Sighting) => number) => rest.reduce((sum, s) => sum + of(s), 0) / rest.length;
+          const hidden = hiddenAtRest(
+            still,
+            behind,
+            model,
+            mean((s) => s.xPx) - body.xPx,
+            mean((s) => s.yPx) - body.yPx,
+          );
+          if (hidden) cuttings.disregard(centreX, centreY, 2 * half + 1, hidden);
+        }
         for (const [i, cut] of cuttings.of(sightings)) {
           const s = sightings[i];
           const speed = speeds[i];

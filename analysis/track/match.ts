@@ -17,7 +17,7 @@ export interface BodyModel {
   readonly mask: Float64Array;
 }
 
-/** The still background behind the bodies [grey levels], same size as the frames. */
+/** The still background behind the bodies [grey levels], same size as the frames; NaN: pixel not to be used. */
 export interface Plate {
   readonly widthPx: number;
   readonly heightPx: number;
@@ -141,6 +141,7 @@ export function makeMatcher(half: number): Matcher {
             const m = mask[u];
             if (m === 0) continue;
             const behind = plate ? brightness * plate.level[pictureRow + column] : 0;
+            if (Number.isNaN(behind)) continue;
             const seen = luma[pictureRow + column];
             const av = a.value[u];
             const cv = c.value[u];
@@ -256,6 +257,7 @@ function gainAndOffset(
       const m = mask[u];
       if (m === 0) continue;
       const behind = plate ? brightness * plate.level[pictureRow + column] : 0;
+      if (Number.isNaN(behind)) continue;
       const seen = picture.luma[pictureRow + column] - (1 - c[u]) * behind;
       aa += m * a[u] * a[u];
       ac += m * a[u] * c[u];
