@@ -1,11 +1,11 @@
 import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
-import type { Picture } from '../../analysis/track/track.ts';
 import { encode } from '../../fixtures/encode.ts';
 import { BlockCache } from '../../main/footage/blockCache.ts';
 import type { FootageBackend } from '../../main/footage/frameSource.ts';
 import { backendsHere } from './backendsHere.ts';
 import { childrenAlive } from './childrenAlive.ts';
+import { lumaDigest } from './lumaDigest.ts';
 import { pattern, patterns } from './pattern.ts';
 import { temporaryFolder } from './temporaryFolder.ts';
 
@@ -21,14 +21,20 @@ beforeAll(async () => {
   await encode(patterns(COUNT, 96, 64), path(), form, { playRateHz: 1000 });
 });
 
-async function forward(backend: FootageBackend): Promise<Picture['luma'][]> {
+const known = new Map<FootageBackend, string[]>();
+
+/** Digests of all frames in order, read once per backend. */
+async function forward(backend: FootageBackend): Promise<string[]> {
+  const before = known.get(backend);
+  if (before !== undefined) return before;
   const source = await backend.open(path());
-  const seen: Picture['luma'][] = [];
+  const seen: string[] = [];
   for await (const { n, picture } of source.frames(0, COUNT - 1)) {
     expect(n).toBe(seen.length);
-    seen.push(picture.luma.slice());
+    seen.push(lumaDigest(picture));
   }
   await source.close();
+  known.set(backend, seen);
   return seen;
 }
 
@@ -43,7 +49,7 @@ describe('frame(n)', () => {
         const anyFrames = fc.array(fc.nat({ max: COUNT - 1 }), { minLength: 3, maxLength: 8 });
         await fc.assert(
           fc.asyncProperty(anyFrames, async (order) => {
-            for (const n of order) expect((await source.frame(n)).luma, `frame ${n}`).toEqual(truth[n]);
+            for (const n of order) expect(lumaDigest(await source.frame(n)), `frame ${n}`).toEqual(truth[n]);
           }),
           { numRuns: 3, seed: 5 },
         );
@@ -59,7 +65,8 @@ describe('frame(n)', () => {
     const source = await backend.open(path());
     await source.index();
     const there = Array.from({ length: 80 }, (_, i) => i);
-    for (const n of [...there, ...there.reverse()]) expect((await source.frame(n)).luma).toEqual(truth[n]);
+    for (const n of [...there, ...there.reverse()])
+      expect(lumaDigest(await source.frame(n))).toEqual(truth[n]);
     await source.close();
   });
 
@@ -92,8 +99,8 @@ describe('frames(first, last)', () => {
       const truth = await forward(backend);
       const source = await backend.open(path());
       const range = async () => {
-        const seen: Picture['luma'][] = [];
-        for await (const { picture } of source.frames(140, 150)) seen.push(picture.luma.slice());
+        const seen: string[] = [];
+        for await (const { picture } of source.frames(140, 150)) seen.push(lumaDigest(picture));
         return seen;
       };
       expect(await range(), backend.name).toEqual(truth.slice(140, 151));

@@ -5,7 +5,7 @@ import { userProgram } from '../../main/footage/backends/userProgram.ts';
 import type { FootageBackend } from '../../main/footage/frameSource.ts';
 
 /** Where the ffmpeg on the PATH is, null where there is none. */
-export function ffmpegOnPathFile(): string | null {
+function ffmpegOnPathFile(): string | null {
   const name = process.platform === 'win32' ? 'ffmpeg.exe' : 'ffmpeg';
   for (const folder of (process.env.PATH ?? '').split(delimiter)) {
     const file = join(folder, name);
@@ -19,12 +19,16 @@ export function ffmpegOnPathFile(): string | null {
   return null;
 }
 
-/** Every backend that works on this machine; a program set by the user is tried with the one on the PATH. */
-export async function backendsHere(): Promise<FootageBackend[]> {
+/** A program set by the user, here the one on the PATH; none where there is none. */
+export function setByUserHere(): FootageBackend[] {
   const program = ffmpegOnPathFile();
-  const all = program === null ? [...backends] : [userProgram(program), ...backends];
+  return program === null ? [] : [userProgram(program)];
+}
+
+/** Every backend that works on this machine without a setting. */
+export async function backendsHere(): Promise<FootageBackend[]> {
   const usable: FootageBackend[] = [];
-  for (const backend of all) if ((await backend.probe()) !== null) usable.push(backend);
+  for (const backend of backends) if ((await backend.probe()) !== null) usable.push(backend);
   if (usable.length === 0) throw new Error('no backend works here: install ffmpeg or node-av');
   return usable;
 }

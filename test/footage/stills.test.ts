@@ -4,6 +4,7 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { openFootage } from '../../main/footage/openFootage.ts';
 import { greyPng } from './formats.ts';
+import { lumaDigest } from './lumaDigest.ts';
 import { pattern } from './pattern.ts';
 import { temporaryFolder } from './temporaryFolder.ts';
 
@@ -18,13 +19,13 @@ async function makeStills(name: string, files: Readonly<Record<string, number>>)
 
 async function read(path: string) {
   const source = await openFootage(path);
-  const seen: unknown[] = [];
-  const index = await source.index({ onFrame: ({ picture }) => seen.push(picture.luma.slice()) });
+  const seen: string[] = [];
+  const index = await source.index({ onFrame: ({ picture }) => seen.push(lumaDigest(picture)) });
   await source.close();
   return { index, seen };
 }
 
-const lumaOf = (...frames: number[]) => frames.map((n) => pattern(n, 48, 32).luma);
+const lumaOf = (...frames: number[]) => frames.map((n) => lumaDigest(pattern(n, 48, 32)));
 
 describe('numbered stills', () => {
   it('are found by pattern, by folder and by the first of them, in order of number', async () => {
