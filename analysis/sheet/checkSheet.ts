@@ -1,4 +1,5 @@
 import { quantities, unitOfQuantity } from '../verdict/quantities.ts';
+import { sameUnit } from '../verdict/sameUnit.ts';
 import type { Finding } from './result.ts';
 import type { Sheet } from './sheet.ts';
 
@@ -87,12 +88,12 @@ export function checkSheet(sheet: Sheet): Finding[] {
   }
   sheet.limits.forEach((limit, i) => {
     const unit = unitOfQuantity(limit.quantity);
-    if (unit === undefined) {
+    if (unit === null) {
       stop(
         'limitUnknown',
         `limits[${i}]: there is no quantity "${limit.quantity}"; it can be ${quantities.map((q) => q.quantity).join(', ')}.`,
       );
-    } else if (limit.unit !== unit) {
+    } else if (!sameUnit(limit.unit, unit)) {
       stop(
         'limitUnit',
         `limits[${i}]: ${limit.quantity} is in ${unit}, but its limit is stated in ${limit.unit}; convert the limit.`,

@@ -1,6 +1,7 @@
 import type { Finding, KeyValue, Verdict } from '../sheet/result.ts';
 import type { SheetLimit } from '../sheet/sheet.ts';
 import { decisionRules, type Outcome } from './decisionRules.ts';
+import { sameUnit } from './sameUnit.ts';
 
 /**
  * Holds each limit against its key value. A limit whose quantity has no value, or is stated in another unit, is undecided and
@@ -28,7 +29,7 @@ export function verdicts(
       });
       return open;
     }
-    if (value.unit !== limit.unit) {
+    if (!sameUnit(value.unit, limit.unit)) {
       findings.push({
         level: 'caution',
         code: 'limitUnit',
