@@ -29,8 +29,10 @@ function twoDigits(u: number): { text: string; places: number } {
 
 function toPlaces(value: number, places: number): string {
   if (places >= 0) return minus(unsignedZero(value.toFixed(Math.min(places, 100))));
+  // Math.round takes halves up, toFixed away from zero: rounding the magnitude keeps a value and its negative alike.
   const step = 10 ** -places;
-  return minus(unsignedZero((Math.round(value / step) * step).toFixed(0)));
+  const rounded = Math.sign(value) * Math.round(Math.abs(value) / step) * step;
+  return minus(unsignedZero(rounded.toFixed(0)));
 }
 
 function unsignedZero(text: string): string {
@@ -38,7 +40,7 @@ function unsignedZero(text: string): string {
 }
 
 function minus(text: string): string {
-  return text.replace('-', '\u2212');
+  return text.replaceAll('-', '\u2212');
 }
 
 function withUnit(text: string, sign: string): string {

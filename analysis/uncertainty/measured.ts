@@ -4,6 +4,8 @@ import { studentT } from './studentT.ts';
 
 /** Beyond this a coverage factor differs from the normal one by less than 0.02 %. */
 const unlimitedDof = 5000;
+/** Of u⁴/Σ(u⁴/ν): it must not take a single source's 18 degrees of freedom for 17. */
+const rounding = 1e-12;
 
 /**
  * A measured value with its budget: combined standard uncertainty (root sum of squares), effective degrees of freedom
@@ -27,7 +29,7 @@ export function measured(
   }
   const u = combined(contributions);
   const nu = effectiveDof(contributions);
-  const dof = nu === null || nu > unlimitedDof ? null : Math.max(1, Math.floor(nu));
+  const dof = nu === null || nu > unlimitedDof ? null : Math.max(1, Math.floor(nu * (1 + rounding)));
   const k = studentT(dof);
   return {
     quantity,
