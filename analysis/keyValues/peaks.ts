@@ -46,6 +46,7 @@ export function peaksOf(
           source: 'positions and smoothing',
           u: along(motion.vxMps[s], motion.vyMps[s], motion.uVxMps[s], motion.uVyMps[s], speedMps),
         },
+        { source: 'between frames', u: betweenFrames(speed, s, inside) },
         ...commonSources(common, speedMps, { length: 1, time: -1 }),
       ],
       { definition: `largest speed at a frame between release and ${until}` },
@@ -59,10 +60,11 @@ export function peaksOf(
           source: 'positions and smoothing',
           u: along(motion.axMps2[a], motion.ayMps2[a], motion.uAxMps2[a], motion.uAyMps2[a], aMps2),
         },
+        { source: 'between frames', u: betweenFrames(acceleration, a, inside) },
         ...commonSources(common, aMps2, { length: 1, time: -2 }),
       ],
       {
-        bandwidthHz: Math.min(bandwidthHz[a], 0.5 / common.frameTimeS),
+        bandwidthHz: bandwidthHz[a],
         definition: `largest magnitude of the acceleration at a frame between release and ${until}, within the stated bandwidth`,
       },
     ),
@@ -75,8 +77,16 @@ export function peaksOf(
     findings.push({
       level: 'caution',
       code: 'peakAtEnd',
-      text: `The tip's acceleration is still rising where ${until === 'extension' ? 'the tether comes straight' : 'the track ends'}: tip.peakAcceleration is what ${(1 / common.frameTimeS).toFixed(0)} frames per second and a bandwidth of ${Math.min(bandwidthHz[a], 0.5 / common.frameTimeS).toPrecision(2)} Hz can show of it, at least so much. A higher capture rate shows more.`,
+      text: `The tip's acceleration is still rising where ${until === 'extension' ? 'the tether comes straight' : 'the track ends'}: tip.peakAcceleration is what ${(1 / common.frameTimeS).toFixed(0)} frames per second and a bandwidth of ${bandwidthHz[a].toPrecision(2)} Hz can show of it, at least so much. A higher capture rate shows more.`,
     });
   }
   return { keyValues, findings };
+}
+
+/** What a peak may gain before or after the frame in which it is largest: the last step up to it, as a rectangle to one side. */
+function betweenFrames(of: (i: number) => number, peak: number, inside: readonly number[]): number {
+  const before = inside.includes(peak - 1) ? of(peak) - of(peak - 1) : 0;
+  const after = inside.includes(peak + 1) ? of(peak) - of(peak + 1) : 0;
+  const step = inside.includes(peak + 1) ? Math.min(before, after) : before;
+  return Math.max(0, step) / Math.sqrt(3);
 }

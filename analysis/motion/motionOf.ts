@@ -1,18 +1,9 @@
 import type { Motion } from '../sheet/result.ts';
+import { type AdaptiveDerivatives, adaptiveDerivatives, type Estimate } from './adaptiveDerivatives.ts';
 import { accelerationBandwidth } from './bandwidth.ts';
-import { type ChosenWindows, chooseWindows } from './chooseWindows.ts';
-import { type Derivatives, localPolynomial } from './localPolynomial.ts';
+import type { Segment } from './localPolynomial.ts';
 import { inflation } from './residuals.ts';
 import type { WorldTrack } from './worldTrack.ts';
-
-/** Degree of the local polynomial: acceleration and its change are both free within a window. */
-const degree = 4;
-
-/** A run of points that no break parts. */
-export interface Segment {
-  readonly from: number;
-  readonly to: number;
-}
 
 /** Motion with the windows it was worked out with, point by point. */
 export interface MotionWithWindows {
@@ -49,25 +40,16 @@ export function motionOf(
   const u = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
   const halfWindowS = blank();
   const bandwidthHz = blank();
-  const bandwidths = new Map<number, number>();
+  const bandwidthFor = rememberedBandwidth(frameTimeS);
 
   for (const segment of segmentsOf(track.timeS, breaksS)) {
-    const down = chooseWindows(track.timeS, track.yM, track.uYM, degree, segment);
-    const across = chooseWindows(track.timeS, track.xM, track.uXM, degree, segment);
-    const dy = localPolynomial(track.timeS, track.yM, track.uYM, down.halfWindowS, degree, segment);
-    const dx = localPolynomial(track.timeS, track.xM, track.uXM, across.halfWindowS, degree, segment);
-    take(segment, dy, down, track.yM, track.uYM, [series.y, series.vy, series.ay], [u.y, u.vy, u.ay]);
-    take(segment, dx, across, track.xM, track.uXM, [series.x, series.vx, series.ax], [u.x, u.vx, u.ax]);
+    const down = adaptiveDerivatives(track.timeS, track.yM, track.uYM, segment);
+    const across = adaptiveDerivatives(track.timeS, track.xM, track.uXM, segment);
+    take(segment, down, track.yM, track.uYM, [series.y, series.vy, series.ay], [u.y, u.vy, u.ay]);
+    take(segment, across, track.xM, track.uXM, [series.x, series.vx, series.ax], [u.x, u.vx, u.ax]);
     for (let i = segment.from; i < segment.to; i++) {
-      const half = down.halfWindowS[i];
-      halfWindowS[i] = half;
-      if (Number.isNaN(half)) continue;
-      let hz = bandwidths.get(half);
-      if (hz === undefined) {
-        hz = accelerationBandwidth(half, frameTimeS, degree);
-        bandwidths.set(half, hz);
-      }
-      bandwidthHz[i] = hz;
+      halfWindowS[i] = down.acceleration.halfWindowS[i];
+      bandwidthHz[i] = bandwidthFor(halfWindowS[i], down.acceleration.degree[i]);
     }
   }
 
@@ -75,7 +57,6 @@ export function motionOf(
     (i) => Number.isFinite(series.ay[i]) && Number.isFinite(series.ax[i]),
   );
   const pick = (values: Float64Array) => known.map((i) => values[i]);
-  const windowsMs = pick(halfWindowS).map((h) => h * 1000);
   return {
     motion: {
       timeS: pick(track.timeS),
@@ -93,13 +74,12 @@ export function motionOf(
       uAyMps2: pick(u.ay),
       measuredXM: pick(track.xM),
       measuredYM: pick(track.yM),
-      method: `local polynomial of degree ${degree}, half-window chosen at each instant for the least estimated error of acceleration`,
+      method:
+        'local polynomial of degree 2 or 4; degree and half-window chosen at each instant, for each of position, velocity and acceleration, for the least estimated error',
       settings: {
-        degree,
-        leastHalfWindowMs: known.length > 0 ? Math.min(...windowsMs) : 0,
-        greatestHalfWindowMs: known.length > 0 ? Math.max(...windowsMs) : 0,
+        /** Of the acceleration along the plumb line. */
         halfWindowS: pick(halfWindowS),
-        bandwidthHz: pick(bandwidthHz).map((hz) => Math.min(hz, 0.5 / frameTimeS)),
+        bandwidthHz: pick(bandwidthHz),
         breaksS: [...breaksS],
       },
     },
@@ -108,28 +88,38 @@ export function motionOf(
   };
 }
 
+/** The bandwidth of each window is worked out once; never more than half the frame rate. */
+function rememberedBandwidth(frameTimeS: number): (halfWindowS: number, degree: number) => number {
+  const known = new Map<string, number>();
+  return (halfWindowS, degree) => {
+    if (Number.isNaN(halfWindowS)) return Number.NaN;
+    const key = `${halfWindowS} ${degree}`;
+    const hz =
+      known.get(key) ?? Math.min(accelerationBandwidth(halfWindowS, frameTimeS, degree), 0.5 / frameTimeS);
+    known.set(key, hz);
+    return hz;
+  };
+}
+
 function take(
   segment: Segment,
-  d: Derivatives,
-  windows: ChosenWindows,
+  d: AdaptiveDerivatives,
   measured: Float64Array,
   uMeasured: Float64Array,
-  [p, v, a]: [Float64Array, Float64Array, Float64Array],
-  [uP, uV, uA]: [Float64Array, Float64Array, Float64Array],
+  values: readonly [Float64Array, Float64Array, Float64Array],
+  us: readonly [Float64Array, Float64Array, Float64Array],
 ): void {
   const standardised = new Float64Array(measured.length).fill(Number.NaN);
   for (let i = segment.from; i < segment.to; i++) {
     if (d.leverage[i] < 0.9) {
-      standardised[i] = (measured[i] - d.position[i]) / (uMeasured[i] * Math.sqrt(1 - d.leverage[i]));
+      standardised[i] = (measured[i] - d.position.value[i]) / (uMeasured[i] * Math.sqrt(1 - d.leverage[i]));
     }
   }
   const wider = inflation(standardised, segment.from, segment.to);
-  for (let i = segment.from; i < segment.to; i++) {
-    p[i] = d.position[i];
-    v[i] = d.velocity[i];
-    a[i] = d.acceleration[i];
-    uP[i] = Math.hypot(wider * d.uPosition[i], windows.biasPosition[i]);
-    uV[i] = Math.hypot(wider * d.uVelocity[i], windows.biasVelocity[i]);
-    uA[i] = Math.hypot(wider * d.uAcceleration[i], windows.biasAcceleration[i]);
-  }
+  [d.position, d.velocity, d.acceleration].forEach((estimate: Estimate, q) => {
+    for (let i = segment.from; i < segment.to; i++) {
+      values[q][i] = estimate.value[i];
+      us[q][i] = Math.hypot(wider * estimate.uNoise[i], estimate.uBias[i]);
+    }
+  });
 }
