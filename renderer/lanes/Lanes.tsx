@@ -8,11 +8,9 @@ import { lanesHeightPx } from '../state/panel.ts';
 import { reduction } from '../state/reduction.ts';
 import { Lane } from './Lane.tsx';
 import { LanesHead } from './LanesHead.tsx';
-import { gutterPx } from './laneChart.ts';
+import { gutterPx, rightPx } from './laneChart.ts';
 import { Splitter } from './Splitter.tsx';
 
-/** Plot areas end this far from the right edge of the lanes [CSS px]; see the charts' padding. */
-const rightPx = 10;
 /** A drag shorter than this is a click [CSS px]. */
 const clickPx = 4;
 

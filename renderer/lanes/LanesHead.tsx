@@ -32,9 +32,9 @@ export function LanesHead() {
       {axis.value === 'x'
         ? null
         : models.map((model) => {
-            const { text, letter, dash } = theoryNames[model];
+            const { short, text, letter, dash } = theoryNames[model];
             return (
-              <label key={model} class="legend">
+              <label key={model} class="legend" title={text}>
                 <input
                   type="checkbox"
                   checked={!hiddenModels.value.has(model)}
@@ -44,7 +44,7 @@ export function LanesHead() {
                     hiddenModels.value = next;
                   }}
                 />
-                <Sample colour={theoryColour} dash={dash} /> {letter} {text}
+                <Sample colour={theoryColour} dash={dash} /> {letter} {short}
               </label>
             );
           })}

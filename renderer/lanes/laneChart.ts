@@ -19,6 +19,12 @@ Chart.register(LineController, LineElement, PointElement, LinearScale);
 
 /** Width of the value axis: the same in every lane, so that their plot areas stand under each other [CSS px]. */
 export const gutterPx = 62;
+/** Plot areas end this far from the right edge [CSS px]. */
+export const rightPx = 10;
+/** Room above a plot area for the lane's name and values [CSS px]. */
+const headPx = 17;
+/** Height of the time axis, where it is shown [CSS px]. */
+const timeAxisPx = 20;
 /** Standard deviations of a 95 % band. */
 const k95 = 1.96;
 
@@ -36,12 +42,16 @@ export function makeLaneChart(canvas: HTMLCanvasElement, isLast: boolean): LaneC
       parsing: false,
       normalized: true,
       events: [],
-      layout: { padding: { top: 3, right: 10, bottom: isLast ? 0 : 2 } },
+      layout: { padding: { top: headPx, right: rightPx } },
       scales: {
         x: {
           type: 'linear',
+          afterFit: (scale) => {
+            scale.height = isLast ? timeAxisPx : 1;
+          },
           ticks: {
             display: isLast,
+            callback: tickText,
             maxRotation: 0,
             color: '#333',
             font: { size: 11 },
@@ -57,7 +67,13 @@ export function makeLaneChart(canvas: HTMLCanvasElement, isLast: boolean): LaneC
           afterFit: (scale) => {
             scale.width = gutterPx;
           },
-          ticks: { color: '#333', font: { size: 11 }, maxTicksLimit: 5, includeBounds: false },
+          ticks: {
+            callback: tickText,
+            color: '#333',
+            font: { size: 11 },
+            maxTicksLimit: 5,
+            includeBounds: false,
+          },
           grid: { color: '#e4e7ea', drawTicks: false },
           border: { color: '#8a939c' },
         },
@@ -66,13 +82,17 @@ export function makeLaneChart(canvas: HTMLCanvasElement, isLast: boolean): LaneC
   });
 }
 
+/** A tick as printed: a true minus, no marks between thousands (a comma is a decimal mark to many), no rounding noise. */
+function tickText(value: number | string): string {
+  return String(Number(Number(value).toPrecision(10))).replace('-', '\u2212');
+}
+
 /** Gives a chart a lane's curves for the time that is shown; the caller draws the cursor. */
 export function fillLaneChart(chart: LaneChart, lane: LaneData, fromS: number, toS: number): void {
   chart.data.datasets = [
     ...lane.traces.map(pointsDataset),
     ...lane.theory.map(
       (t): ChartDataset<'line', Point[]> => ({
-        label: theoryNames[t.model].letter,
         data: xy(t.timeS, t.value),
         borderColor: theoryColour,
         borderWidth: 1.25,

@@ -1,6 +1,6 @@
 import type { Plugin } from 'chart.js';
 
-/** Writes each curve's letter at its last point inside the lane, so that no curve is told by colour alone. */
+/** Writes each body's letter at its last point inside the lane, so that no curve is told by colour alone. */
 export const letterPlugin: Plugin = {
   id: 'curveLetters',
   afterDatasetsDraw(chart) {

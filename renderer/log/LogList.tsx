@@ -1,6 +1,7 @@
 import { useEffect } from 'preact/hooks';
 import { formatMeasured } from '../../analysis/uncertainty/formatMeasured.ts';
 import type { ReductionSummary } from '../../main/log/log.ts';
+import { instantText } from '../parts/instantText.ts';
 import { Outcome } from '../parts/Outcome.tsx';
 import { nameOfPath } from '../state/footage.ts';
 import { chainSaid, checkChain, logProblem, openFromLog, readLog, saved } from '../state/log.ts';
@@ -42,9 +43,9 @@ function Saved({ rows }: { readonly rows: readonly ReductionSummary[] }) {
       <thead>
         <tr>
           <th scope="col">No.</th>
-          <th scope="col">Saved</th>
-          <th scope="col">Footage</th>
-          <th scope="col">ball.g ± U (k = 2)</th>
+          <th scope="col">
+            Footage, saved, ball.g ± <i>U</i> (<i>k</i> = 2)
+          </th>
           <th scope="col">Verdict</th>
           <th scope="col">
             <span class="visually-hidden">Open</span>
@@ -55,10 +56,14 @@ function Saved({ rows }: { readonly rows: readonly ReductionSummary[] }) {
         {rows.map((row) => (
           <tr key={row.id} class={reduction.value?.savedId === row.id ? 'shown' : ''}>
             <th scope="row">{row.id}</th>
-            <td class="figures">{new Date(row.savedAt).toLocaleString()}</td>
-            <td title={row.footagePath}>{nameOfPath(row.footagePath)}</td>
-            <td class="figures">
-              {row.ballG ? formatMeasured(row.ballG.value, 2 * row.ballG.u, 'm/s2') : '–'}
+            <td>
+              <span class="path" title={row.footagePath}>
+                {nameOfPath(row.footagePath)}
+              </span>
+              <div class="figures hint">
+                {instantText(row.savedAt)}
+                {row.ballG ? ` · ${formatMeasured(row.ballG.value, 2 * row.ballG.u, 'm/s2')}` : ''}
+              </div>
             </td>
             <td>
               <Outcome outcome={row.outcome} />

@@ -1,5 +1,5 @@
 import type { KeyValue } from '../../analysis/sheet/result.ts';
-import { quantities } from '../sheet/quantities.ts';
+import { quantityMeaning } from './quantityMeaning.ts';
 import { siUnit } from './siUnit.ts';
 
 /** The uncertainty contributions behind a value, the largest first, with each one's share of the variance. */
@@ -10,7 +10,7 @@ export function Budget({ keyValue }: { readonly keyValue: KeyValue }) {
   return (
     <div class="budget">
       <p>
-        {quantities[quantity]?.text}
+        {quantityMeaning(quantity)}
         {definition === undefined ? '' : `: ${definition}`}
         {bandwidthHz === undefined ? '' : ` (bandwidth ${bandwidthHz.toFixed(0)} Hz)`}
       </p>

@@ -1,5 +1,6 @@
 import { useEffect, useRef, useState } from 'preact/hooks';
 import { browseProblem, browsing, listed, listFolder, type Purpose, takeFile } from '../state/browsing.ts';
+import { instantText } from './instantText.ts';
 
 const titles: Readonly<Record<Purpose, string>> = {
   openFootage: 'Open footage',
@@ -100,7 +101,7 @@ function Browser({ purpose }: { readonly purpose: Purpose }) {
                   >
                     <span>{f.name}</span>
                     <span class="hint">
-                      {sizeText(f.sizeBytes)} · {new Date(f.modifiedAt).toLocaleString()}
+                      {sizeText(f.sizeBytes)} · {instantText(f.modifiedAt)}
                     </span>
                   </button>
                 </li>

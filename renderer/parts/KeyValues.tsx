@@ -1,8 +1,8 @@
 import { useState } from 'preact/hooks';
 import type { KeyValue } from '../../analysis/sheet/result.ts';
 import { formatMeasured } from '../../analysis/uncertainty/formatMeasured.ts';
-import { quantities } from '../sheet/quantities.ts';
 import { Budget } from './Budget.tsx';
+import { QuantityName } from './QuantityName.tsx';
 
 /** Key values with their expanded uncertainty at 95 %; each opens its budget. */
 export function KeyValues({ keyValues }: { readonly keyValues: readonly KeyValue[] }) {
@@ -19,9 +19,7 @@ export function KeyValues({ keyValues }: { readonly keyValues: readonly KeyValue
           <th scope="col">
             <i>k</i>
           </th>
-          <th scope="col">
-            <span class="visually-hidden">Budget</span>
-          </th>
+          <th scope="col">Budget</th>
         </tr>
       </thead>
       <tbody>
@@ -39,8 +37,8 @@ function KeyValueRows({ keyValue }: { readonly keyValue: KeyValue }) {
   return (
     <>
       <tr data-quantity={quantity}>
-        <th scope="row" title={quantities[quantity]?.text}>
-          {quantity}
+        <th scope="row">
+          <QuantityName quantity={quantity} />
         </th>
         <td class="figures">{formatMeasured(value, U95, unit)}</td>
         <td class="figures">{k.toFixed(2)}</td>
@@ -52,7 +50,7 @@ function KeyValueRows({ keyValue }: { readonly keyValue: KeyValue }) {
             aria-label={`Budget of ${quantity}`}
             onClick={() => setOpen(!open)}
           >
-            {open ? '▾' : '▸'} budget
+            {open ? '▾' : '▸'}
           </button>
         </td>
       </tr>

@@ -1,6 +1,7 @@
 import type { Verdict } from '../../analysis/sheet/result.ts';
 import type { DraftLimit } from '../state/draft.ts';
 import { Outcome } from './Outcome.tsx';
+import { QuantityName } from './QuantityName.tsx';
 import { siUnit } from './siUnit.ts';
 
 export function Verdicts({
@@ -24,7 +25,9 @@ export function Verdicts({
       <tbody>
         {verdicts.map((v, i) => (
           <tr key={i}>
-            <th scope="row">{v.quantity}</th>
+            <th scope="row">
+              <QuantityName quantity={v.quantity} />
+            </th>
             <td class="figures">{limitText(limits[i])}</td>
             <td class="figures">{v.margin === null ? '–' : `${marginText(v.margin)} ${siUnit(v.unit)}`}</td>
             <td>

@@ -4,12 +4,27 @@ import type { Theory } from '../../analysis/sheet/result.ts';
 export const theoryNames: Readonly<
   Record<
     Theory['model'],
-    { readonly text: string; readonly letter: string; readonly dash: readonly number[] }
+    {
+      readonly text: string;
+      readonly short: string;
+      readonly letter: string;
+      readonly dash: readonly number[];
+    }
   >
 > = {
-  freeFall: { text: 'free fall', letter: 'F', dash: [1, 3] },
-  freeFallDrag: { text: 'free fall with drag', letter: 'D', dash: [8, 3, 1, 3] },
-  foldedTetherEnergy: { text: 'folded tether, energy form', letter: 'E', dash: [10, 4] },
-  foldedTetherMomentum: { text: 'folded tether, momentum form', letter: 'M', dash: [3, 3] },
-  linkedTether: { text: 'linked tether', letter: 'L', dash: [12, 3, 2, 3] },
+  freeFall: { text: 'free fall', short: 'free fall', letter: 'F', dash: [1, 3] },
+  freeFallDrag: { text: 'free fall with drag', short: 'with drag', letter: 'D', dash: [8, 3, 1, 3] },
+  foldedTetherEnergy: {
+    text: 'folded tether, energy form',
+    short: 'energy form',
+    letter: 'E',
+    dash: [10, 4],
+  },
+  foldedTetherMomentum: {
+    text: 'folded tether, momentum form',
+    short: 'momentum form',
+    letter: 'M',
+    dash: [3, 3],
+  },
+  linkedTether: { text: 'linked tether', short: 'linked tether', letter: 'L', dash: [12, 3, 2, 3] },
 };

@@ -51,7 +51,7 @@ export function ClockPart() {
       {clock.kind === 'timestamps' ? (
         <TextField field="clock.path" label="File, one time in s per frame" />
       ) : null}
-      <div class="measured-field">
+      <div class="measured-field pair">
         <NumberField field="camera.exposureS" label="Exposure" unit="s" assumed={String(assumedExposureS)} />
         <NumberField field="camera.rowTimeS" label="Row time" unit="s" assumed={String(assumedRowTimeS)} />
       </div>

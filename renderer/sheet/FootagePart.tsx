@@ -14,11 +14,12 @@ export function FootagePart() {
       {path === undefined ? <p class="hint">No footage yet.</p> : <p class="path">{path}</p>}
       {shown ? (
         <p class="hint">
+          {shown.widthPx} × {shown.heightPx} px, {shown.bitDepth} bit, {shown.frameCount} frames;{' '}
           {shown.codec}, {shown.pixelFormat}, luma {shown.lumaRule}; SHA-256 {shown.sha256.slice(0, 12)}…
         </p>
       ) : null}
       <div class="field-row">
-        <NumberField field="footage.firstFrame" label="First frame" unit="" assumed="0" />
+        <NumberField field="footage.firstFrame" label="First frame" unit="" placeholder="0" />
         <button type="button" disabled={!shown} onClick={useFrame('footage.firstFrame')}>
           this frame
         </button>
@@ -26,7 +27,7 @@ export function FootagePart() {
           field="footage.lastFrame"
           label="Last frame"
           unit=""
-          assumed={shown ? String(shown.frameCount - 1) : undefined}
+          placeholder={shown ? String(shown.frameCount - 1) : 'the last'}
         />
         <button type="button" disabled={!shown} onClick={useFrame('footage.lastFrame')}>
           this frame

@@ -1,8 +1,9 @@
+import { quantities, unitOfQuantity } from '../../analysis/verdict/quantities.ts';
+import { quantityMeaning } from '../parts/quantityMeaning.ts';
 import type { FieldUnit } from '../parts/quantityText.ts';
 import { type DraftLimit, draft, setField } from '../state/draft.ts';
 import { NumberField } from './NumberField.tsx';
 import { Part } from './Part.tsx';
-import { quantities } from './quantities.ts';
 
 const fieldUnits: Readonly<Record<string, FieldUnit>> = {
   'm/s2': 'm/s²',
@@ -27,7 +28,7 @@ export function LimitsPart() {
               value={limit.quantity}
               onChange={(event) => setField(`limits[${i}]`, forQuantity(limit, event.currentTarget.value))}
             >
-              {[...new Set([...Object.keys(quantities), limit.quantity])].map((name) => (
+              {[...new Set([...quantities.map((q) => q.quantity), limit.quantity])].map((name) => (
                 <option key={name} value={name}>
                   {name}
                 </option>
@@ -55,8 +56,8 @@ export function LimitsPart() {
               Remove
             </button>
           </div>
-          <p class="hint">{quantities[limit.quantity]?.text}</p>
-          <div class="measured-field">
+          <p class="hint">{quantityMeaning(limit.quantity)}</p>
+          <div class="measured-field pair">
             <NumberField field={`limits[${i}].min`} label="At least" unit={fieldUnits[limit.unit] ?? ''} />
             <NumberField field={`limits[${i}].max`} label="At most" unit={fieldUnits[limit.unit] ?? ''} />
           </div>
@@ -71,6 +72,6 @@ export function LimitsPart() {
 
 /** Another quantity has another unit, so the numbers do not go with it. */
 function forQuantity(limit: DraftLimit, quantity: string): DraftLimit {
-  const unit = quantities[quantity]?.unit ?? limit.unit;
+  const unit = unitOfQuantity(quantity) ?? limit.unit;
   return unit === limit.unit ? { ...limit, quantity } : { quantity, unit, rule: limit.rule };
 }

@@ -21,9 +21,7 @@ export function MarkButton({ id }: { readonly id: string }) {
         {mark.letter}
       </span>
       <span class="visually-hidden">{mark.name} </span>
-      <span class="figures">
-        {mark.at ? `${pxText(mark.at.x)}, ${pxText(mark.at.y)} px` : 'set on picture'}
-      </span>
+      <span class="figures">{mark.at ? `${pxText(mark.at.x)}, ${pxText(mark.at.y)}` : 'set on picture'}</span>
       {mark.at && mark.frame !== null ? <span class="hint"> frame {mark.frame}</span> : null}
     </button>
   );

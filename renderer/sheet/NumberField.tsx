@@ -1,6 +1,6 @@
 import { useState } from 'preact/hooks';
 import { type FieldUnit, fieldText, readQuantity } from '../parts/quantityText.ts';
-import { missingIsShown, problemsOfField } from '../state/check.ts';
+import { shownProblemsOfField } from '../state/check.ts';
 import { draft, setField, setUnreadable, unreadable } from '../state/draft.ts';
 import { type FieldPath, valueAt } from '../state/fieldPath.ts';
 
@@ -12,18 +12,31 @@ export interface NumberFieldProps {
   readonly assumed?: string | undefined;
   /** True for the standard uncertainty of the field before it. */
   readonly isU?: boolean;
+  /** What an empty field means, where it is no assumption. */
+  readonly placeholder?: string | undefined;
   readonly needed?: boolean;
+  readonly title?: string;
 }
 
 /** A number of the sheet with its unit; what is typed is taken as it is typed, problems are said below it. */
-export function NumberField({ field, label, unit, assumed, isU = false, needed = false }: NumberFieldProps) {
+export function NumberField({
+  field,
+  label,
+  unit,
+  assumed,
+  isU = false,
+  needed = false,
+  placeholder,
+  title,
+}: NumberFieldProps) {
   const [typing, setTyping] = useState<string | null>(null);
   const stated = valueAt(draft.value, field);
   const kept = unreadable.value.get(field);
   const text = typing ?? kept?.text ?? fieldText(typeof stated === 'number' ? stated : undefined);
-  const found = problemsOfField(field).filter(() => text !== '' || missingIsShown.value);
+  const found = shownProblemsOfField(field);
   const missing = text === '';
   const asked = missing && (isU || needed);
+  const silence = needed ? 'needed' : isU ? 'not stated' : '';
   const described = found.length > 0 ? `${field}-problem` : undefined;
   return (
     <div
@@ -40,12 +53,11 @@ export function NumberField({ field, label, unit, assumed, isU = false, needed =
           autocomplete="off"
           spellcheck={false}
           value={text}
-          placeholder={
-            assumed === undefined ? (needed ? 'needed' : isU ? 'not stated' : '') : `${assumed} assumed`
-          }
+          placeholder={placeholder ?? (assumed === undefined ? silence : `${assumed} assumed`)}
           aria-label={
             isU ? `Standard uncertainty of ${label} [${unit}]` : `${label}${unit === '' ? '' : ` [${unit}]`}`
           }
+          title={title}
           aria-invalid={found.some((p) => p.level === 'stop')}
           aria-describedby={described}
           onFocus={(event) => event.currentTarget.select()}
@@ -55,7 +67,7 @@ export function NumberField({ field, label, unit, assumed, isU = false, needed =
           }}
           onBlur={() => setTyping(null)}
         />
-        {unit === '' || unit === '1' ? null : <span class="unit">{unit}</span>}
+        {unit === '' ? null : <span class="unit">{unit === '1' ? 'rel.' : unit}</span>}
       </span>
       {found.length > 0 ? (
         <p class="field-problem" id={described}>

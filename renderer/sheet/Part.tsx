@@ -2,12 +2,11 @@ import type { ComponentChildren } from 'preact';
 import {
   confirmPart,
   isCarriedOver,
-  missingIsShown,
   type PartName,
   type PartState,
   partState,
   parts,
-  problemsOfPart,
+  shownProblemsOfPart,
 } from '../state/check.ts';
 
 const signs: Readonly<Record<PartState, string>> = { empty: '○', unsettled: '◐', settled: '●', stale: '↻' };
@@ -26,9 +25,7 @@ export function Part({
   readonly ownFields: readonly string[];
 }) {
   const state = partState(name);
-  const found = problemsOfPart(name).filter(
-    (p) => !ownFields.includes(p.field) && (state !== 'empty' || missingIsShown.value),
-  );
+  const found = shownProblemsOfPart(name).filter((p) => !ownFields.includes(p.field));
   return (
     <section class={`sheet-part part-${state}`} aria-labelledby={`part-${name}`}>
       <h2 id={`part-${name}`}>
@@ -48,7 +45,7 @@ export function Part({
       {children}
       {found.map((p) => (
         <p key={p.text} class={p.level === 'stop' ? 'field-problem' : 'field-caution'}>
-          {p.text}
+          {p.text.startsWith(p.field) ? p.text : `${p.field}: ${p.text}`}
         </p>
       ))}
     </section>

@@ -35,13 +35,16 @@ export function ScalePart() {
             needed
             assumedU={String(assumedULengthM)}
           />
-          <NumberField
-            field={`scale.bars[${i}].uMarkPx`}
-            label="each mark"
-            unit="px"
-            assumed={String(assumedUMarkPx)}
-            isU
-          />
+          <div class="measured-field">
+            <span class="beside-u">Each mark</span>
+            <NumberField
+              field={`scale.bars[${i}].uMarkPx`}
+              label="each mark"
+              unit="px"
+              assumed={String(assumedUMarkPx)}
+              isU
+            />
+          </div>
           {bars.length > 1 ? (
             <button
               type="button"
@@ -87,7 +90,8 @@ export function ScalePart() {
       <MeasuredField
         field="scale.planeOffsetM"
         u="scale.uPlaneOffsetM"
-        label="Bodies before bar"
+        label="Plane offset"
+        title="How far the plane of the bodies is in front of the bar, towards the camera (+) or away from it (−)"
         unit="m"
         assumed={String(assumedPlaneOffsetM)}
         assumedU={String(assumedUPlaneOffsetM)}

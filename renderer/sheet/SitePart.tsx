@@ -30,7 +30,7 @@ export function SitePart() {
       {draft.value.siteBy === 'gravity' ? (
         <MeasuredField field="site.gMps2" u="site.uGMps2" label="Local gravity" unit="m/s²" />
       ) : (
-        <div class="measured-field">
+        <div class="measured-field pair">
           <NumberField field="site.latitudeDeg" label="Latitude" unit="°" />
           <NumberField field="site.heightM" label="Height" unit="m" />
         </div>

@@ -1,11 +1,11 @@
-import { missingIsShown, problemsOfField } from '../state/check.ts';
+import { shownProblemsOfField } from '../state/check.ts';
 import { draft, setField } from '../state/draft.ts';
 import { type FieldPath, valueAt } from '../state/fieldPath.ts';
 
 export function TextField({ field, label }: { readonly field: FieldPath; readonly label: string }) {
   const stated = valueAt(draft.value, field);
   const text = typeof stated === 'string' ? stated : '';
-  const found = problemsOfField(field).filter(() => text !== '' || missingIsShown.value);
+  const found = shownProblemsOfField(field);
   return (
     <div class="text-field">
       <label for={`field-${field}`}>{label}</label>

@@ -2,7 +2,6 @@ import { useEffect, useRef } from 'preact/hooks';
 import { pxText } from '../parts/numberText.ts';
 import { shownFrame } from '../state/frames.ts';
 import { pointerAt, selectedMark } from '../state/marks.ts';
-import { shownZoom } from '../state/zoom.ts';
 import { paintLuma } from './paintLuma.ts';
 
 const sidePx = 21;
@@ -36,9 +35,7 @@ export function Loupe({ onLeft }: { readonly onLeft: boolean }) {
           <output class="loupe-place">
             x {pxText(at.x)}&ensp;y {pxText(at.y)} px
           </output>
-          <div class="hint">
-            arrows 1 px · Shift 0.1 px{magnification < shownZoom.value ? '' : ` · ${magnification}×`}
-          </div>
+          <div class="hint">Arrows 1 px, Shift 0.1 px; {magnification}×</div>
         </>
       ) : (
         <div class="hint">

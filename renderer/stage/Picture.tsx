@@ -2,7 +2,7 @@ import { useEffect, useRef } from 'preact/hooks';
 import { footage } from '../state/footage.ts';
 import { shownFrame } from '../state/frames.ts';
 import { marks, placeMark, pointerAt, selectedMark } from '../state/marks.ts';
-import { cssPerPx, screenScale, shownZoom } from '../state/zoom.ts';
+import { cssPerPx, room, screenScale, shownZoom } from '../state/zoom.ts';
 import { MarkHandle } from './MarkHandle.tsx';
 import { Outlines } from './Outlines.tsx';
 import { paintLuma } from './paintLuma.ts';
@@ -34,7 +34,12 @@ export function Picture() {
     // biome-ignore lint/a11y/useKeyWithClickEvents: as above
     <div
       class={selectedMark.value ? 'picture placing' : 'picture'}
-      style={{ width: `${widthCss}px`, height: `${heightCss}px` }}
+      style={{
+        width: `${widthCss}px`,
+        height: `${heightCss}px`,
+        marginLeft: `${middled(room.value.widthPx, widthCss)}px`,
+        marginTop: `${middled(room.value.heightPx, heightCss)}px`,
+      }}
       onClick={place}
       onPointerMove={(event) => {
         if (selectedMark.value) pointerAt.value = at(event);
@@ -55,6 +60,12 @@ export function Picture() {
       {marks.value.map((mark) => (mark.at ? <MarkHandle key={mark.id} mark={mark} at={mark.at} /> : null))}
     </div>
   );
+}
+
+/** Space before the picture that puts it in the middle, on whole pixels of the screen: else they would not be true. */
+function middled(roomCss: number, sizeCss: number): number {
+  const scale = screenScale.value;
+  return Math.max(0, Math.floor(((roomCss - sizeCss) / 2) * scale) / scale);
 }
 
 /** After a click the mark's handle has the focus, so that the arrow keys go on from there. */

@@ -10,9 +10,6 @@ export function TrackStates() {
   return (
     <div class="stage-name">
       <strong title={shown.path}>{shown.name}</strong>
-      <span class="hint">
-        {shown.widthPx} × {shown.heightPx} px, {shown.bitDepth} bit, {shown.frameCount} frames
-      </span>
       {bodiesInFrame.value.map(({ id, role, state, score }) => (
         <span key={id} class={`track-state track track-${role}`}>
           <svg width="20" height="20" viewBox="-12 -12 24 24" aria-hidden="true">

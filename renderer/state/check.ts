@@ -11,6 +11,8 @@ export interface Problem {
   readonly field: FieldPath;
   readonly text: string;
   readonly level: 'stop' | 'caution';
+  /** True where there is nothing yet; such problems are said once a reduction was asked for. */
+  readonly missing: boolean;
 }
 
 /** True from the first time a reduction was asked for: then what is missing is said, too. */
@@ -19,7 +21,7 @@ export const missingIsShown = signal(false);
 /** What is wrong or missing in the sheet as it stands. */
 export const problems = computed<readonly Problem[]>(() => {
   const texts = [...unreadable.value].map(
-    ([field, { problem }]): Problem => ({ field, text: problem, level: 'stop' }),
+    ([field, { problem }]): Problem => ({ field, text: problem, level: 'stop', missing: false }),
   );
   const parsed = parseSheet(sheetJson(draft.value));
   if (!parsed.ok) return [...texts, ...parsed.problems.map((line) => problemOf(line, 'stop'))];
@@ -34,9 +36,10 @@ export const stops = computed(() => problems.value.filter((p) => p.level === 'st
 /** "clock.captureRateHz: is missing" is a problem of that field; other lines start with the field's name and go on. */
 function problemOf(line: string, level: Problem['level']): Problem {
   const [, path, colon, rest] = /^([A-Za-z0-9.[\]]+)(:?)\s+(.*)$/.exec(line) ?? [];
-  if (path === undefined) return { field: '', text: line, level };
+  const missing = / is missing;/.test(line);
+  if (path === undefined) return { field: '', text: line, level, missing };
   const field = bodyIndexOfDraft(path);
-  return { field, text: colon ? (rest ?? line) : line, level };
+  return { field, text: colon ? (rest ?? line) : line, level, missing };
 }
 
 /** The checked sheet leaves out bodies that are not placed, so its indices are turned into those of the draft. */
@@ -72,12 +75,18 @@ const roots: Readonly<Record<PartName, readonly string[]>> = {
 /** Parts whose marks belong to the picture: they are looked at again when the footage changes. */
 const marked: readonly PartName[] = ['scale', 'bodies'];
 
-export function problemsOfPart(name: PartName): readonly Problem[] {
+function problemsOfPart(name: PartName): readonly Problem[] {
   return problems.value.filter(({ field }) => roots[name].includes(field.split(/[.[]/)[0] ?? ''));
 }
 
-export function problemsOfField(field: FieldPath): readonly Problem[] {
-  return problems.value.filter((p) => p.field === field);
+/** What is to be said of a part now. */
+export function shownProblemsOfPart(name: PartName): readonly Problem[] {
+  return problemsOfPart(name).filter((p) => missingIsShown.value || !(p.missing || isEmpty(name)));
+}
+
+/** What is to be said of a field now. */
+export function shownProblemsOfField(field: FieldPath): readonly Problem[] {
+  return problems.value.filter((p) => p.field === field && (missingIsShown.value || !p.missing));
 }
 
 export function partState(name: PartName): PartState {
