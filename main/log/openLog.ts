@@ -151,7 +151,11 @@ function rowOf(
 function savedReduction(file: string, row: ReductionRow): SavedReduction {
   const fault = faultOf(row, null);
   if (fault)
-    throw new Refusal('reductionChanged', 1, `Log ${file}: reduction ${row.id} cannot be trusted: ${fault}.`);
+    throw new Refusal(
+      'reductionChanged',
+      1,
+      `Log ${file}: reduction ${row.id} cannot be trusted: it ${fault}.`,
+    );
   const sheet: unknown = JSON.parse(row.sheet_json);
   const result: unknown = JSON.parse(row.result_json);
   const known = sheetSchema.safeParse(sheet).success && resultSchema.safeParse(result).success;

@@ -40,10 +40,12 @@ export async function verifyChain(tx: Transaction): Promise<{ id: number; reason
 
 /** What is wrong with a row in itself, or with its place after the row before. */
 export function faultOf(row: ReductionRow, previousHash: string | null): string | null {
-  if (sha256(row.sheet_json) !== row.sheet_json_sha256) return 'its sheet was changed after it was saved';
-  if (sha256(row.result_json) !== row.result_json_sha256) return 'its result was changed after it was saved';
-  if (hashOfRow(row) !== row.hash) return 'it was changed after it was saved';
+  if (sha256(row.sheet_json) !== row.sheet_json_sha256)
+    return 'has a sheet that was changed after it was saved';
+  if (sha256(row.result_json) !== row.result_json_sha256)
+    return 'has a result that was changed after it was saved';
+  if (hashOfRow(row) !== row.hash) return 'was changed after it was saved';
   if (previousHash !== null && row.previous_hash !== previousHash)
-    return 'it does not follow the reduction before it: that one was changed or replaced';
+    return 'does not follow the reduction before it: one of the two was changed or replaced';
   return null;
 }

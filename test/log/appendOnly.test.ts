@@ -127,7 +127,7 @@ describe('a reduction that was changed outside the program', () => {
     await expect(log.get(2)).rejects.toMatchObject({
       name: 'Refusal',
       status: 1,
-      message: expect.stringContaining('reduction 2 cannot be trusted: its result was changed'),
+      message: expect.stringContaining('reduction 2 cannot be trusted: it has a result that was changed'),
     });
     expect((await log.get(3)).id).toBe(3);
   });
