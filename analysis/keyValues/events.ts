@@ -7,6 +7,7 @@ import { airOf } from '../theory/air.ts';
 import { measured } from '../uncertainty/measured.ts';
 import { dropAndLead, extensionTimes } from './extensionValues.ts';
 import { gravityCheck, gravityOf } from './gravityCheck.ts';
+import { fallsFreelyUntil } from './landing.ts';
 import type { NumbersInput } from './numbersInput.ts';
 import { releaseDifference, releaseFindings } from './releaseFindings.ts';
 
@@ -41,7 +42,7 @@ export function eventsOf(input: NumbersInput): Events {
     fall = ballFall(
       ball,
       ballRelease.timeS,
-      Number.POSITIVE_INFINITY,
+      fallsFreelyUntil(ball, ballRelease.timeS),
       common.frameTimeS,
       gravity.gMps2,
       sphereOf(input, ball),

@@ -59,7 +59,7 @@ export function dropAndLead(
 ): KeyValue[] {
   const at = fall.heightAt(extension.timeS);
   const dropM = ballRelease.yM - at.yM;
-  const speedMps = fall.gMps2 * (extension.timeS - ballRelease.timeS);
+  const speedMps = Math.abs(fall.gMps2 * (extension.timeS - ballRelease.timeS));
   const own: Contribution[] = [
     { source: 'instant of extension', u: speedMps * extension.uTimeS },
     { source: 'positions of the ball', u: Math.hypot(at.uYM, ballRelease.uYM) },

@@ -22,7 +22,7 @@ export function releaseFindings(track: WorldTrack, release: Release | null): Fin
     {
       level: 'caution',
       code: 'restNotSeen',
-      text: `Only ${release.restFrames} frames show body ${track.bodyId} at rest: its release is worked back on the assumption that it started from rest. Film at least ${leastRestFrames} frames before release.`,
+      text: `Only ${release.restFrames} ${release.restFrames === 1 ? 'frame shows' : 'frames show'} body ${track.bodyId} at rest: its release is worked back on the assumption that it started from rest. Film at least ${leastRestFrames} frames before release.`,
     },
   ];
 }
