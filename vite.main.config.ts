@@ -28,7 +28,7 @@ export default defineConfig({
         reduceWorker: 'main/jobs/reduceWorker.ts',
         nodeAvProcess: 'main/footage/nodeAvProcess.ts',
       },
-      external: ['electron'],
+      external: ['electron', 'ffmpeg-static', 'node-av'],
       output: { entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
     },
   },

@@ -48,6 +48,8 @@ const memory = 5;
 export const longestGap = 20;
 /** Below this the patch is not the body, whatever the light. */
 const leastScore = 0.5;
+/** Light on a body changes by less than this factor from frame to frame; noise fitted as the body has hardly any contrast. */
+const leastGain = 0.4;
 /** A score that falls by this much, or a body this far from where it was expected, asks for a wide search to be sure. */
 const doubtfulFall = 0.15;
 const doubtfulPx = 2;
@@ -122,6 +124,9 @@ export function startFollower(
     const sure = near?.converged && gap === 1 && near.score > usualScore - doubtfulFall && offPx < doubtfulPx;
     if (near && sure) return near;
 
+    // A body that must have left the picture is not looked for in it.
+    if (px.value < 0 || py.value < 0 || px.value > picture.widthPx - 1 || py.value > picture.heightPx - 1)
+      return null;
     // A body can change its speed by as much as it has (a tether that comes straight), or by a few pixels from rest.
     const radiusPx = Math.min(6 + 1.5 * speedPx + 3 * gap, 150);
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
@@ -132,6 +137,8 @@ export function startFollower(
       (m): m is Match =>
         m?.converged === true &&
         m.score > Math.max(leastScore, usualScore - 0.4) &&
+        m.gain > leastGain &&
+        m.gain < 1 / leastGain &&
         Math.hypot(m.xPx - px.value, m.yPx - py.value) <= radiusPx + 2,
     );
     return acceptable.reduce<Match | null>(

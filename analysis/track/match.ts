@@ -36,6 +36,8 @@ export interface Match {
   readonly residual: number;
   /** Zero-normalised cross-correlation of model and frame. */
   readonly score: number;
+  /** Contrast of the body in the frame relative to its model. */
+  readonly gain: number;
   /** Share of the mask's weight that lies inside the picture. */
   readonly inside: number;
   readonly converged: boolean;
@@ -202,6 +204,7 @@ export function makeMatcher(half: number): Matcher {
             covXYPx2: variance * inverse[1],
             residual: Math.sqrt(variance),
             score: varI > 0 && varM > 0 ? cov / Math.sqrt(varI * varM) : 0,
+            gain,
             inside,
             converged,
           };

@@ -23,7 +23,8 @@ export interface ReduceOrder {
 
 export interface ReduceTools {
   readonly openFootage: (path: string) => Promise<FrameSource>;
-  readonly search: WideSearch;
+  /** Called when the footage is open: loading the search takes longer than most refusals. */
+  readonly loadSearch: () => Promise<WideSearch>;
   readonly signal?: AbortSignal;
   readonly onProgress?: (progress: Progress) => void;
 }
@@ -46,7 +47,7 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
     const { index, firstFrame, lastFrame, tracks } = await followBodies(
       source,
       sheet,
-      tools.search,
+      await tools.loadSearch(),
       tools.signal,
       report,
     );

@@ -18,7 +18,7 @@ port.on('message', (message: ToWorker) => {
 try {
   const result = await reduceSheet(workerData as ReduceOrder, {
     openFootage,
-    search: await loadWideSearch(),
+    loadSearch: loadWideSearch,
     signal: cancel.signal,
     onProgress: (progress) => say({ kind: 'progress', progress }),
   });
