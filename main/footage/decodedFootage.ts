@@ -1,16 +1,16 @@
 import type { Picture } from '../../analysis/track/track.ts';
 import { Refusal } from '../refusal.ts';
-import { BlockCache } from './blockCache.ts';
+import { BlockReader } from './blockReader.ts';
 import { buildIndex } from './buildIndex.ts';
 import type { Decoder, StreamFacts } from './decoder.ts';
-import type { FootageInput } from './footageInput.ts';
-import { footageInput } from './footageInput.ts';
+import { type FootageInput, footageInput } from './footageInput.ts';
 import type { FootageIndex, FrameSource, NumberedPicture } from './frameSource.ts';
 import { frameStream } from './frameStream.ts';
 
 /** How much decoded footage frame(n) may keep. */
 const CACHE_BYTES = 256 << 20;
-const BLOCK_BYTES = 40 << 20;
+/** A block of frames, counted at two bytes per pixel. */
+const BLOCK_BYTES = 80 << 20;
 const MOST_FRAMES_IN_BLOCK = 64;
 
 /** Opens footage with a decoder. @throws Refusal (status 3) where there is no video to decode */
@@ -25,12 +25,6 @@ export async function openDecoded(path: string, decoder: Decoder): Promise<Frame
   }
 }
 
-interface Loading {
-  readonly block: number;
-  readonly done: Promise<void>;
-  readonly controller: AbortController;
-}
-
 /** Footage that a decoder reads: everything that does not depend on which decoder. */
 class DecodedFootage implements FrameSource {
   readonly path: string;
@@ -40,14 +34,9 @@ class DecodedFootage implements FrameSource {
   readonly #decoder: Decoder;
   readonly #life = new AbortController();
   readonly #streams = new Set<AsyncGenerator<NumberedPicture, void>>();
-  readonly #cache = new BlockCache(CACHE_BYTES);
-  readonly #blockFrames: number;
+  readonly #blocks: BlockReader;
   #indexing: Promise<FootageIndex> | null = null;
   #index: FootageIndex | null = null;
-  /** The decoder that filled the last block, waiting to fill the next. */
-  #ahead: { next: number; frames: AsyncGenerator<NumberedPicture, void> } | null = null;
-  #loading: Loading | null = null;
-  #lastAsked = -1;
 
   constructor(path: string, input: FootageInput, facts: StreamFacts, decoder: Decoder) {
     this.path = path;
@@ -55,8 +44,13 @@ class DecodedFootage implements FrameSource {
     this.#input = input;
     this.#facts = facts;
     this.#decoder = decoder;
-    const bytes = facts.widthPx * facts.heightPx * 2;
-    this.#blockFrames = Math.max(1, Math.min(MOST_FRAMES_IN_BLOCK, Math.floor((2 * BLOCK_BYTES) / bytes)));
+    const fit = Math.floor(BLOCK_BYTES / (2 * facts.widthPx * facts.heightPx));
+    this.#blocks = new BlockReader({
+      blockFrames: Math.max(1, Math.min(MOST_FRAMES_IN_BLOCK, fit)),
+      cacheBytes: CACHE_BYTES,
+      frameCount: () => this.#index?.frameCount ?? null,
+      open: (first, signal) => this.frames(first, Number.POSITIVE_INFINITY, signal),
+    });
   }
 
   index(options: Parameters<FrameSource['index']>[0] = {}): Promise<FootageIndex> {
@@ -106,69 +100,17 @@ class DecodedFootage implements FrameSource {
 
   async frame(n: number, signal?: AbortSignal): Promise<Picture> {
     if (!Number.isInteger(n) || n < 0) throw new RangeError(`${this.path}: ${n} is no frame number`);
-    const block = Math.floor(n / this.#blockFrames);
     if (this.#index !== null && n >= this.#index.frameCount) throw this.#beyond(n, this.#index);
-    while (!this.#cache.has(block)) {
-      if (this.#loading !== null && this.#loading.block !== block) this.#loading.controller.abort();
-      this.#loading ??= this.#load(block);
-      await settled(this.#loading, block, this.#lifeOr(signal));
-    }
-    const pictures = this.#cache.get(block) ?? [];
-    const picture = pictures[n - block * this.#blockFrames];
-    if (picture === undefined)
-      throw this.#beyond(n, await this.index(signal === undefined ? {} : { signal }));
-    this.#loadAhead(n, block);
-    return { ...picture, luma: picture.luma.slice() };
+    const picture = await this.#blocks.picture(n, this.#lifeOr(signal));
+    if (picture !== null) return picture;
+    throw this.#beyond(n, await this.index(signal === undefined ? {} : { signal }));
   }
 
   async close(): Promise<void> {
     this.#life.abort(new DOMException('the footage was closed', 'AbortError'));
     const ended = [...this.#streams].map((stream) => stream.return().catch(() => {}));
-    await Promise.allSettled([...ended, this.#indexing, this.#loading?.done]);
+    await Promise.allSettled([...ended, this.#indexing, this.#blocks.close()]);
     await this.#decoder.close();
-    this.#cache.clear();
-  }
-
-  /** Steps forwards or back meet a block that is already there. */
-  #loadAhead(n: number, block: number): void {
-    const step = n - this.#lastAsked;
-    this.#lastAsked = n;
-    if (this.#loading !== null || step === 0 || Math.abs(step) > this.#blockFrames) return;
-    const next = block + Math.sign(step);
-    const within = this.#index === null || next * this.#blockFrames < this.#index.frameCount;
-    if (next >= 0 && within && !this.#cache.has(next)) this.#loading = this.#load(next);
-  }
-
-  #load(block: number): Loading {
-    const controller = new AbortController();
-    const done = this.#fill(block, controller.signal).finally(() => {
-      this.#loading = null;
-    });
-    done.catch(() => {}); // a load ahead that fails is met again when its block is asked for
-    return { block, done, controller };
-  }
-
-  async #fill(block: number, signal: AbortSignal): Promise<void> {
-    const first = block * this.#blockFrames;
-    if (this.#ahead?.next !== first) {
-      await this.#ahead?.frames.return();
-      const last = this.#index === null ? Number.POSITIVE_INFINITY : this.#index.frameCount - 1;
-      this.#ahead = { next: first, frames: this.frames(first, last) };
-    }
-    const ahead = this.#ahead;
-    const pictures: Picture[] = [];
-    while (pictures.length < this.#blockFrames) {
-      const step = await ahead.frames.next();
-      if (step.done || signal.aborted) break;
-      pictures.push({ ...step.value.picture, luma: step.value.picture.luma.slice() });
-    }
-    if (signal.aborted) {
-      this.#ahead = null;
-      await ahead.frames.return();
-      throw signal.reason;
-    }
-    ahead.next = first + pictures.length;
-    this.#cache.put(block, pictures);
   }
 
   #beyond(n: number, { frameCount }: FootageIndex): Refusal {
@@ -179,16 +121,4 @@ class DecodedFootage implements FrameSource {
   #lifeOr(signal: AbortSignal | undefined): AbortSignal {
     return signal === undefined ? this.#life.signal : AbortSignal.any([this.#life.signal, signal]);
   }
-}
-
-/** Waits for a load; one that was ended for the sake of another block is no failure. */
-async function settled(loading: Loading, block: number, signal: AbortSignal): Promise<void> {
-  signal.throwIfAborted();
-  const aborted = new Promise<never>((_, reject) => {
-    signal.addEventListener('abort', () => reject(signal.reason), { once: true });
-  });
-  const done = loading.done.catch((error: unknown) => {
-    if (!loading.controller.signal.aborted || loading.block === block) throw error;
-  });
-  await Promise.race([done, aborted]);
 }
