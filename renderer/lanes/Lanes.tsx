@@ -72,6 +72,9 @@ export function Lanes() {
           {lanes.value.map((lane, i) => (
             <Lane key={lane.name} lane={lane} isLast={i === lanes.value.length - 1} />
           ))}
+          <span class="time-unit" aria-hidden="true">
+            time s
+          </span>
           {dragged.value && Math.abs(dragged.value.to - dragged.value.from) >= clickPx ? (
             <div
               class="drag-range"

@@ -17,8 +17,8 @@ export function LanesHead() {
             axis.value = event.currentTarget.value === 'x' ? 'x' : 'y';
           }}
         >
-          <option value="y">vertical (up)</option>
-          <option value="x">horizontal (right)</option>
+          <option value="y">vertical, up</option>
+          <option value="x">horizontal</option>
         </select>
       </label>
       {traces.map(({ id, role, letter }) => {
@@ -48,7 +48,6 @@ export function LanesHead() {
               </label>
             );
           })}
-      <span class="legend hint">band: 95 %</span>
       <fieldset class="button-row lanes-zoom" aria-label="Zoom in time">
         <button type="button" aria-label="Longer time" title="- (in the lanes)" onClick={() => zoomTimeBy(2)}>
           −

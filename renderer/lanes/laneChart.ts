@@ -24,7 +24,7 @@ export const rightPx = 10;
 /** Room above a plot area for the lane's name and values [CSS px]. */
 const headPx = 17;
 /** Height of the time axis, where it is shown [CSS px]. */
-const timeAxisPx = 20;
+const timeAxisPx = 24;
 /** Standard deviations of a 95 % band. */
 const k95 = 1.96;
 
@@ -58,7 +58,7 @@ export function makeLaneChart(canvas: HTMLCanvasElement, isLast: boolean): LaneC
             autoSkipPadding: 24,
             includeBounds: false,
           },
-          grid: { color: '#e4e7ea', drawTicks: isLast },
+          grid: { color: '#e4e7ea', drawTicks: isLast, tickLength: 4 },
           border: { color: '#8a939c' },
           title: { display: false },
         },

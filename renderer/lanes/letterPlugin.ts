@@ -25,9 +25,10 @@ export const letterPlugin: Plugin = {
       const at = inside.reduce((best, p) => (Math.abs(p.x - x) < Math.abs(best.x - x) ? p : best), last);
       ctx.lineWidth = 3;
       ctx.strokeStyle = '#fff';
-      ctx.strokeText(letter, x, at.y - 8);
+      const y = Math.max(at.y - 8, chartArea.top + 6);
+      ctx.strokeText(letter, x, y);
       ctx.fillStyle = String(dataset.borderColor);
-      ctx.fillText(letter, x, at.y - 8);
+      ctx.fillText(letter, x, y);
     });
     ctx.restore();
   },

@@ -33,7 +33,7 @@ export function Picture() {
     // biome-ignore lint/a11y/noStaticElementInteractions: the pointer's way; by keyboard the marks' handles and Enter do the same
     // biome-ignore lint/a11y/useKeyWithClickEvents: as above
     <div
-      class={selectedMark.value ? 'picture placing' : 'picture'}
+      class={selectedMark.value ? `picture placing${selectedMark.value.at ? '' : ' setting'}` : 'picture'}
       style={{
         width: `${widthCss}px`,
         height: `${heightCss}px`,
