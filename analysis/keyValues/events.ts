@@ -62,7 +62,7 @@ export function eventsOf(input: NumbersInput): Events {
     }),
   );
   if (!sheet.tether) return { releases, extension: null, fall, keyValues, findings };
-  const found = extensionOf(tip, tipRelease.timeS, tipRelease.yM, sheet.tether.lengthM, common.frameTimeS);
+  const found = extensionOf(tip, tipRelease.timeS, tipRelease.yM, sheet.tether, common.frameTimeS);
   if (!found.ok) {
     findings.push({
       level: 'caution',

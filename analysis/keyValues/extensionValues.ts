@@ -25,7 +25,7 @@ export function extensionTimes(
   ];
   const values = [
     measured('tip.extensionTime', durationS, 's', sources, {
-      definition: 'from release of the tip to its lowest place, where the tether is straight',
+      definition: `from release of the tip to extension, seen as the tip's ${extension.seenAs === 'lowest place' ? 'lowest place' : 'greatest distance from the anchor'}`,
     }),
   ];
   if (tether) {

@@ -1,84 +1,151 @@
 import type { WorldTrack } from './worldTrack.ts';
 
-/** The instant the tether is straight, seen as the tip's lowest place. */
+/** The instant the tether is straight. */
 export interface Extension {
   readonly timeS: number;
   readonly uTimeS: number;
-  /** Lowest height of the tip [m] with its standard uncertainty. */
+  /** Height of the tip at that instant [m] with its standard uncertainty. */
   readonly yM: number;
   readonly uYM: number;
+  readonly seenAs: 'farthest from the anchor' | 'lowest place';
 }
 
 export type ExtensionFound =
   | { readonly ok: true; readonly extension: Extension }
   | { readonly ok: false; readonly reason: string };
 
-/** The tip rebounds by at least this share of its fall within a few frames; noise and a slack swing do not. */
-const reboundShare = 0.01;
-/** With the length stated, the tip's fall at extension lies between these shares of it (separation, stretch, mark errors). */
+/** What is known of the tether beforehand. */
+export interface TetherShape {
+  readonly lengthM?: number;
+  /** Horizontal distance of the two ends before release. */
+  readonly separationM?: number;
+}
+
+/** After its extreme the tip comes back by at least this share of the extreme; noise and a slack swing do not. */
+const returnShare = 0.001;
+/** With the length stated, the extreme lies between these shares of it (stretch, mark errors, heights of the two ends). */
 const leastShare = 0.75;
 const mostShare = 1.3;
+/** Without it, a fall shorter than this is no extension [m]. */
+const leastFallM = 0.02;
 
 /**
- * Extension: the tip's lowest place after release. For small separation it coincides with the first maximum of the distance
- * from the anchor to 0.05 % of the time (linked-tether integration, shared published values, section a). Between frames the
- * instant comes from the parabola through the three lowest points; because a tip turns round within a frame or two, it is
- * taken to be uncertain by a rectangle of half a frame to either side.
+ * Extension: with the separation stated, the first maximum of the tip's distance from the anchor, which hangs level with the
+ * tip's start, on the side on which that maximum is nearest to the tether's length. Without it, the tip's lowest place, which
+ * coincides to 0.05 % of the time for small separation (linked-tether integration, shared published values, section a) and is
+ * later for a wide one (0.4 % at a separation of 0.3 of the length).
  *
- * @param releaseS   release of the tip
- * @param startYM    height of the tip before release
- * @param lengthM    tether length where it is stated
+ * Between frames the instant comes from the parabola through the three points about the extreme; because a tip can turn round
+ * within a frame or two, it is taken to be uncertain by a rectangle of half a frame to either side.
+ *
+ * @param releaseS  release of the tip
+ * @param startYM   height of the tip before release
  */
 export function extensionOf(
   track: WorldTrack,
   releaseS: number,
   startYM: number,
-  lengthM: number | undefined,
+  { lengthM, separationM }: TetherShape,
   frameTimeS: number,
 ): ExtensionFound {
-  const { timeS, yM, uYM } = track;
-  const n = timeS.length;
-  const first = timeS.findIndex((t) => t > releaseS);
-  let lowest = first;
-  for (let i = first; first >= 0 && i < n; i++) {
-    if (yM[i] < yM[lowest]) lowest = i;
-    const fall = startYM - yM[lowest];
-    const rise = yM[i] - yM[lowest];
-    const longEnough = lengthM === undefined ? fall > 0.02 : fall > leastShare * lengthM;
-    if (!longEnough || rise < Math.max(reboundShare * fall, 8 * uYM[i])) continue;
-    if (lengthM !== undefined && fall > mostShare * lengthM) {
-      return {
-        ok: false,
-        reason: `the tip fell ${fall.toFixed(3)} m, much more than the tether is long; check tether.lengthM and the scale`,
-      };
-    }
-    return { ok: true, extension: turningPoint(track, lowest, frameTimeS) };
+  const first = track.timeS.findIndex((t) => t > releaseS);
+  if (first < 0) return { ok: false, reason: 'the tip is not followed beyond its release' };
+  const fallM = track.yM.map((y) => startYM - y);
+  const lowest = firstMaximum(fallM, track.uYM, first, lengthM);
+
+  let candidates: { k: number | null; reachM: Float64Array }[] = [{ k: lowest, reachM: fallM }];
+  if (separationM !== undefined && lengthM !== undefined && separationM > 0) {
+    const startXM = median(track.xM.slice(0, Math.max(1, first)));
+    candidates = [separationM, -separationM].map((anchorXM) => {
+      const reachM = fallM.map((f, i) => Math.hypot(track.xM[i] - startXM - anchorXM, f));
+      return { k: firstMaximum(reachM, track.uYM, first, lengthM), reachM };
+    });
   }
-  const fell = first < 0 ? 0 : startYM - yM[lowest];
+  const found = candidates.flatMap(({ k, reachM }) => (k === null ? [] : [{ k, reachM }]));
+  if (found.length === 0) {
+    const fell = Math.max(...fallM);
+    return {
+      ok: false,
+      reason: `the tip is followed only until it has fallen ${fell.toFixed(3)} m and is not seen to turn back; film on past extension, or set the tip by hand where it was lost`,
+    };
+  }
+  const off = ({ k, reachM }: { k: number; reachM: Float64Array }) => Math.abs(reachM[k] - (lengthM ?? 0));
+  const best = found.reduce((a, b) => (off(b) < off(a) ? b : a));
+  if (lengthM !== undefined && best.reachM[best.k] > mostShare * lengthM) {
+    return {
+      ok: false,
+      reason: `the tip is ${best.reachM[best.k].toFixed(3)} m from where it hung, much more than the tether is long; check tether.lengthM and the scale`,
+    };
+  }
+  const seenAs = candidates.length > 1 ? 'farthest from the anchor' : 'lowest place';
+  return { ok: true, extension: atExtreme(track, best.reachM, best.k, frameTimeS, seenAs) };
+}
+
+/** Index of the first maximum from which the values come back; null when they do not. */
+function firstMaximum(
+  values: Float64Array,
+  u: Float64Array,
+  first: number,
+  lengthM: number | undefined,
+): number | null {
+  let highest = first;
+  for (let i = first; i < values.length; i++) {
+    if (values[i] > values[highest]) highest = i;
+    const enough = lengthM === undefined ? leastFallM : leastShare * lengthM;
+    if (
+      values[highest] > enough &&
+      values[highest] - values[i] > Math.max(returnShare * values[highest], 8 * u[i])
+    )
+      return highest;
+  }
+  return null;
+}
+
+function median(values: Float64Array): number {
+  const sorted = values.slice().sort();
+  return sorted[sorted.length >> 1];
+}
+
+function atExtreme(
+  { timeS, yM, uYM }: WorldTrack,
+  reachM: Float64Array,
+  k: number,
+  frameTimeS: number,
+  seenAs: Extension['seenAs'],
+): Extension {
+  const uTimeS = frameTimeS / Math.sqrt(12);
+  if (k === 0 || k === yM.length - 1) return { timeS: timeS[k], uTimeS, yM: yM[k], uYM: uYM[k], seenAs };
+  const t = [timeS[k - 1], timeS[k], timeS[k + 1]] as const;
+  const atS = vertex(t, [reachM[k - 1], reachM[k], reachM[k + 1]]) ?? timeS[k];
+  const height = parabola(t, [yM[k - 1], yM[k], yM[k + 1]], atS);
+  const stepM = Math.max(Math.abs(yM[k] - yM[k - 1]), Math.abs(yM[k + 1] - yM[k]));
   return {
-    ok: false,
-    reason: `the tip is followed only until it has fallen ${fell.toFixed(3)} m and is not seen to rebound; film on past extension, or set the tip by hand where it was lost`,
+    timeS: atS,
+    uTimeS,
+    yM: height,
+    // A tip that turns within a frame need not follow the parabola: a tenth of its way from frame to frame.
+    uYM: Math.hypot(uYM[k], height - yM[k], stepM / 10),
+    seenAs,
   };
 }
 
-function turningPoint({ timeS, yM, uYM }: WorldTrack, k: number, frameTimeS: number): Extension {
-  const whole = { timeS: timeS[k], uTimeS: frameTimeS / Math.sqrt(12), yM: yM[k], uYM: uYM[k] };
-  if (k === 0 || k === yM.length - 1) return whole;
-  // Divided differences: the times need not be even.
-  const [ta, tb, tc] = [timeS[k - 1], timeS[k], timeS[k + 1]];
-  const ab = (yM[k] - yM[k - 1]) / (tb - ta);
-  const bc = (yM[k + 1] - yM[k]) / (tc - tb);
-  const curvature = (bc - ab) / (tc - ta);
-  if (curvature <= 0) return whole;
-  const vertexS = (ta + tb) / 2 - ab / (2 * curvature);
-  const at = Math.min(tc, Math.max(ta, vertexS));
-  const yVertex = yM[k] + (ab + curvature * (at - ta)) * (at - tb);
-  const stepS = Math.max(tb - ta, tc - tb);
-  return {
-    timeS: at,
-    uTimeS: stepS / Math.sqrt(12),
-    yM: Math.min(yVertex, yM[k]),
-    // How far the tip went unseen below the lowest frame is itself the measure of how well that is known.
-    uYM: Math.hypot(uYM[k], yM[k] - Math.min(yVertex, yM[k]), Math.abs(ab) * stepS * 0.1),
-  };
+type Three = readonly [number, number, number];
+
+/** Divided differences of three points: the times need not be even. */
+function differences(t: Three, v: Three): { first: number; second: number } {
+  const first = (v[1] - v[0]) / (t[1] - t[0]);
+  return { first, second: ((v[2] - v[1]) / (t[2] - t[1]) - first) / (t[2] - t[0]) };
+}
+
+function parabola(t: Three, v: Three, atS: number): number {
+  const { first, second } = differences(t, v);
+  return v[0] + (first + second * (atS - t[1])) * (atS - t[0]);
+}
+
+/** Time of the parabola's maximum between the outer points; null when it has none there. */
+function vertex(t: Three, v: Three): number | null {
+  const { first, second } = differences(t, v);
+  if (second >= 0) return null;
+  const atS = (t[0] + t[1]) / 2 - first / (2 * second);
+  return atS >= t[0] && atS <= t[2] ? atS : null;
 }

@@ -53,11 +53,31 @@ describe('extensionOf', () => {
         noisyTrack('tip', frames(280, 1000), rebound(lowestS), 20e-6, k + 1),
         0,
         0,
-        0.31,
+        { lengthM: 0.31 },
         0.001,
       );
       expect(found.ok).toBe(true);
       if (found.ok) expect(Math.abs(found.extension.timeS - lowestS)).toBeLessThan(0.0006);
+    }
+  });
+
+  it('is the greatest distance from the anchor where the separation is stated, on whichever side it hangs', () => {
+    // A pendulum-like path about an anchor at (±0.1, 0): the distance is largest, 0.31 m, at 0.25 s, the lowest place is later.
+    for (const side of [1, -1]) {
+      const reach = (t: number) => 0.31 - 0.4 * (t - 0.25) ** 2 - (t > 0.25 ? 0.5 * (t - 0.25) : 0);
+      const angle = (t: number) => 1.2 * (0.28 - t);
+      const timeS = frames(290, 1000);
+      const track = noisyTrack(
+        'tip',
+        timeS,
+        (t) => (t < 0.002 ? 0 : -reach(t) * Math.cos(angle(t))),
+        5e-6,
+        3,
+      );
+      const xM = timeS.map((t) => (t < 0.002 ? 0 : side * (0.1 - reach(t) * Math.sin(angle(t)))));
+      const found = extensionOf({ ...track, xM }, 0.001, 0, { lengthM: 0.31, separationM: 0.1 }, 0.001);
+      expect(found).toMatchObject({ ok: true, extension: { seenAs: 'farthest from the anchor' } });
+      if (found.ok) expect(found.extension.timeS).toBeCloseTo(0.25, 3);
     }
   });
 
@@ -66,7 +86,7 @@ describe('extensionOf', () => {
       noisyTrack('tip', frames(200, 1000), (t) => -0.5 * g * t * t, 20e-6, 1),
       0,
       0,
-      0.31,
+      { lengthM: 0.31 },
       0.001,
     );
     expect(found).toMatchObject({
@@ -80,7 +100,7 @@ describe('extensionOf', () => {
       noisyTrack('tip', frames(280, 1000), rebound(0.15), 20e-6, 2),
       0,
       0,
-      0.9,
+      { lengthM: 0.9 },
       0.001,
     );
     expect(found.ok).toBe(false);
@@ -91,7 +111,7 @@ describe('extensionOf', () => {
       noisyTrack('tip', frames(280, 1000), rebound(0.25), 20e-6, 2),
       0,
       0,
-      0.1,
+      { lengthM: 0.1 },
       0.001,
     );
     expect(found).toMatchObject({ ok: false, reason: expect.stringContaining('check tether.lengthM') });
