@@ -29,7 +29,7 @@ function collectNames(node: SchemaNode, into: Set<string>): void {
 let names: ReadonlySet<string> | undefined;
 
 /** Every field name that a sheet may hold, at whatever depth. */
-export function sheetFieldNames(): ReadonlySet<string> {
+function sheetFieldNames(): ReadonlySet<string> {
   if (!names) {
     const found = new Set<string>();
     collectNames(z.toJSONSchema(sheetSchema, { io: 'input' }) as SchemaNode, found);

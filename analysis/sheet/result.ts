@@ -4,13 +4,13 @@ import { z } from 'zod';
 
 const numbers = z.array(z.number());
 
-export const findingSchema = z.object({
+const findingSchema = z.object({
   level: z.enum(['note', 'caution', 'stop']),
   code: z.string(),
   text: z.string(),
 });
 
-export const bodyStateSchema = z.enum(['measured', 'bridged', 'lost', 'manual']);
+const bodyStateSchema = z.enum(['measured', 'bridged', 'lost', 'manual']);
 
 /** Where a body is in a frame. A lost body has no position: x, y, ux, uy are absent. */
 const bodyInFrame = z.object({

@@ -2,7 +2,7 @@ import { type Layer, makeLayer, makeSampler, REACH, sampledFor } from './layer.t
 import type { BodyModel } from './match.ts';
 
 /** Blur shorter than this changes a body's look by less than its noise: not worth modelling. */
-export const leastBlurPx = 0.35;
+const leastBlurPx = 0.35;
 
 /**
  * A layer averaged along the way the body goes while the shutter is open: the mean of the layer at evenly spread instants

@@ -2,7 +2,7 @@ import type { Plate } from './match.ts';
 import type { Picture } from './track.ts';
 
 /** The part of one frame around a body, and of the plate behind it. */
-export interface Cutting {
+interface Cutting {
   readonly picture: Picture;
   readonly plate: Plate | null;
   readonly brightness: number;

@@ -12,7 +12,7 @@ export interface RestPlace {
 }
 
 /** With fewer frames than this a median may still show a body. */
-export const leastFrames = 7;
+const leastFrames = 7;
 /** Above this correlation with the frame that shows it, the body is taken to be still at its place. */
 const stillThere = 0.6;
 
