@@ -33,7 +33,7 @@ async function demo(options: DemoOptions): Promise<void> {
   const progress = options.quiet ? noProgress : progressFor(process.stderr);
   const { title, done } = await interruptible(async (signal) => {
     if (!options.quiet)
-      process.stderr.write('Making the footage of the demo drop; this takes half a minute.\n');
+      process.stderr.write('Making the footage of the demo drop; this takes a while (10 to 30 s).\n');
     const title = await makeDemoIn(folder, signal);
     const sheetPath = join(folder, sheetName);
     const resultPath = join(folder, resultName);

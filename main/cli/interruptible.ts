@@ -1,7 +1,11 @@
-const statusOf = { SIGINT: 130, SIGTERM: 143 } as const;
-type Interrupt = keyof typeof statusOf;
+const statusOf = { SIGINT: 130, SIGTERM: 143, SIGHUP: 129 } as const;
+const interrupts = ['SIGINT', 'SIGTERM', 'SIGHUP'] as const;
+type Interrupt = (typeof interrupts)[number];
 
-/** The user (Ctrl-C) or the system told the program to stop. */
+/** One Ctrl-C arrives up to three times: from the terminal, and passed on by npm and by the TypeScript loader. */
+const echoMs = 1000;
+
+/** The user told the program to stop (Ctrl-C, terminal closed), or the system did. */
 export class Interrupted extends Error {
   readonly code = 'interrupted';
   /** 128 + the signal's number, as shells do. */
@@ -22,19 +26,21 @@ export class Interrupted extends Error {
  */
 export async function interruptible<T>(work: (signal: AbortSignal) => Promise<T>): Promise<T> {
   const stop = new AbortController();
+  let firstMs = 0;
   const onSignal = (by: Interrupt) => {
-    if (stop.signal.aborted) process.exit(statusOf[by]);
-    stop.abort(new Interrupted(by));
+    const nowMs = performance.now();
+    if (!stop.signal.aborted) {
+      firstMs = nowMs;
+      stop.abort(new Interrupted(by));
+    } else if (nowMs - firstMs > echoMs) process.exit(statusOf[by]);
   };
-  process.on('SIGINT', onSignal);
-  process.on('SIGTERM', onSignal);
+  for (const by of interrupts) process.on(by, onSignal);
   try {
     return await work(stop.signal);
   } catch (error) {
     // Ctrl-C reaches the decoder too: whatever it says as it goes down, the cause was the user
     throw stop.signal.aborted ? stop.signal.reason : error;
   } finally {
-    process.off('SIGINT', onSignal);
-    process.off('SIGTERM', onSignal);
+    for (const by of interrupts) process.off(by, onSignal);
   }
 }
