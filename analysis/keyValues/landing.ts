@@ -1,7 +1,7 @@
 import type { WorldTrack } from '../motion/worldTrack.ts';
 
 /** A fall is compared with the one before it only where that one is this many standard uncertainties of a height long. */
-const leastFallSigma = 20;
+const leastFallSigma = 40;
 /** A body that falls freely or towards its terminal speed never falls less than in the equal time before; half is far from it. */
 const slowedShare = 0.5;
 

@@ -65,6 +65,8 @@ export interface Matcher {
 
 /** Residuals beyond this many standard deviations lose weight (Huber). 2.5 costs 1 % of precision on Gaussian noise. */
 const huberAt = 2.5;
+/** Beyond this a pixel shows something else (a tether that crosses) and counts for nothing, once the match is near. */
+const rejectAt = 6;
 const mostSteps = 12;
 const settledPx = 2e-4;
 const leastInside = 0.6;
@@ -150,7 +152,12 @@ export function makeMatcher(half: number): Matcher {
             const modelled = gain * av + offset * cv + (1 - cv) * behind;
             const r = seen - modelled;
             const size = r < 0 ? -r : r;
-            const w = size > huberAt * noise ? (m * huberAt * noise) / size : m;
+            const w =
+              size <= huberAt * noise
+                ? m
+                : step > 1 && size > rejectAt * noise
+                  ? 0
+                  : (m * huberAt * noise) / size;
             const lift = offset - behind;
             const jx = -(gain * a.slopeX[u] + lift * c.slopeX[u]);
             const jy = -(gain * a.slopeY[u] + lift * c.slopeY[u]);
