@@ -43,7 +43,7 @@ describe('a record that lacks something gives its finding and no value that rest
     const lost = withTracks(good, (t) => (t.role === 'tip' ? framesOf(t, (at) => at < releaseS + 0.3) : t));
     const { given, codes, text } = outcome(lost);
     expect(codes).toContain('extensionNotSeen');
-    expect(text('extensionNotSeen')).toMatch(/until it has fallen 0\.4\d\d m and is not seen to rebound/);
+    expect(text('extensionNotSeen')).toMatch(/until it has fallen 0\.4\d\d m and is not seen to turn back/);
     for (const quantity of ofExtension) expect(given).not.toContain(quantity);
     expect(given).toContain('ball.g');
   });

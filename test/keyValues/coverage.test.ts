@@ -22,8 +22,8 @@ describe('95 % intervals over synthetic records', () => {
     const coverage = coverageOf(cell, records);
     for (const quantity of ['ball.g', 'tip.releaseTime']) {
       expect(coverage[quantity].share, quantity).toBeGreaterThanOrEqual(leastShare);
-      expect(coverage[quantity].given).toBe(records);
     }
+    for (const [quantity, { given }] of Object.entries(coverage)) expect(given, quantity).toBe(records);
     // Not so wide that they would hold anything: of the order of what 60 records scatter.
     expect(coverage['tip.releaseTime'].meanU95).toBeLessThan(3 * coverage['tip.releaseTime'].greatestError);
 

@@ -42,6 +42,22 @@ export interface SyntheticRecord {
 /** The air of the example sheet: 21 °C, 100 800 Pa, 45 %; density and viscosity from tables of moist air. */
 const air = { airDensityKgpm3: 1.1893, airViscosityPas: 1.818e-5 };
 
+/** Longer than any record lasts after release [s]. */
+const longestFallS = 0.8;
+/** The integration of each sphere is done once: many records share it. */
+const drops = new Map<RecordSpec['sphere'], (timeS: number) => number>();
+
+function dropOf(sphere: RecordSpec['sphere']): (timeS: number) => number {
+  let drop = drops.get(sphere);
+  if (!drop) {
+    drop = sphere
+      ? sphereDrop(gMps2, { ...sphere, ...air }, longestFallS)
+      : (t: number) => 0.5 * gMps2 * Math.max(0, t) ** 2;
+    drops.set(sphere, drop);
+  }
+  return drop;
+}
+
 /** Positions of tip and ball through a whole drop, without any picture; truth from closed forms and an integration of its own. */
 export function syntheticRecord(spec: RecordSpec): SyntheticRecord {
   const random = seededRandom(spec.seed);
@@ -50,9 +66,7 @@ export function syntheticRecord(spec: RecordSpec): SyntheticRecord {
   const releaseS = (restFrames + random.uniform()) * frameTimeS;
   const lastsS = releaseS + extensionS + (spec.afterS ?? 0.04);
   const count = Math.floor(lastsS / frameTimeS) + 1;
-  const drop = spec.sphere
-    ? sphereDrop(gMps2, { ...spec.sphere, ...air }, lastsS)
-    : (t: number) => 0.5 * gMps2 * Math.max(0, t) ** 2;
+  const drop = dropOf(spec.sphere);
   const landsS = spec.landsS ?? Number.POSITIVE_INFINITY;
 
   const tip = trackOf('tip', 'tip', count, frameTimeS, spec.noiseM, random, (t) => tipHeight(t - releaseS));

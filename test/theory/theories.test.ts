@@ -67,7 +67,7 @@ describe('theories', () => {
 
   it('tell a freely falling tip from one that a fold pulls', () => {
     const { chiSquared } = chiSquaredOf(asked(falling), 'foldedTetherEnergy');
-    // 250 ms after release the energy form is 9 mm ahead, ninety standard uncertainties
+    // 250 ms after release the energy form is 23 mm ahead, 230 standard uncertainties
     expect(chiSquared).toBeGreaterThan(100 * fallingFrames);
   });
 });
