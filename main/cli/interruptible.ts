@@ -41,6 +41,7 @@ export async function interruptible<T>(work: (signal: AbortSignal) => Promise<T>
     // Ctrl-C reaches the decoder too: whatever it says as it goes down, the cause was the user
     throw stop.signal.aborted ? stop.signal.reason : error;
   } finally {
-    for (const by of interrupts) process.off(by, onSignal);
+    // once stopped, the handlers stay: a late echo must not end the program before it has said why it stops
+    if (!stop.signal.aborted) for (const by of interrupts) process.off(by, onSignal);
   }
 }

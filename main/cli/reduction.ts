@@ -21,7 +21,7 @@ interface ReductionOrder {
 }
 
 /** Where the reduction is in the log; why it is not; or null when it was not to be saved. */
-export type Logged = { readonly id: number; readonly path: string } | { readonly problem: string } | null;
+type Logged = { readonly id: number; readonly path: string } | { readonly problem: string } | null;
 
 export interface Reduction {
   readonly sheet: Sheet;

@@ -9,4 +9,7 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
 });
 process.on('uncaughtException', (error) => process.exit(tell(error)));
 
-process.exitCode = await commandLine(process.argv.slice(2));
+const status = await commandLine(process.argv.slice(2));
+// Stopped by a signal: do not wait for work that cannot be called back (making the demo's footage).
+if (status > 128) process.exit(status);
+process.exitCode = status;

@@ -1,6 +1,6 @@
 import sqlite3 from 'sqlite3';
 
-export type SqlValue = string | number | null;
+type SqlValue = string | number | null;
 
 /** What can be done inside a transaction. */
 export interface Transaction {
