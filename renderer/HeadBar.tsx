@@ -51,7 +51,7 @@ export function HeadBar() {
             type="button"
             class="primary"
             title="Ctrl+Enter"
-            disabled={job.value !== null}
+            disabled={job.value !== null || opening.value !== null}
             onClick={() => void attemptReduce()}
           >
             Reduce

@@ -1,4 +1,4 @@
-import { footageGone } from '../state/log.ts';
+import { footageGone } from '../state/footage.ts';
 import { reduction } from '../state/reduction.ts';
 import { Findings } from './Findings.tsx';
 import { KeyValues } from './KeyValues.tsx';

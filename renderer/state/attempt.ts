@@ -1,10 +1,11 @@
 import { missingIsShown, stops } from './check.ts';
-import { footage } from './footage.ts';
+import { footage, opening } from './footage.ts';
 import { panel } from './panel.ts';
-import { reduceDraft, reduceProblem, reduction } from './reduction.ts';
+import { job, reduceDraft, reduceProblem, reduction } from './reduction.ts';
 
 /** Reduces the sheet, or says what is still missing and leads to the first of it. */
 export async function attemptReduce(): Promise<void> {
+  if (opening.value || job.value) return;
   missingIsShown.value = true;
   const [first] = stops.value;
   if (first) {

@@ -24,7 +24,10 @@ export const problems = computed<readonly Problem[]>(() => {
     ([field, { problem }]): Problem => ({ field, text: problem, level: 'stop', missing: false }),
   );
   const parsed = parseSheet(sheetJson(draft.value));
-  if (!parsed.ok) return [...texts, ...parsed.problems.map((line) => problemOf(line, 'stop'))];
+  if (!parsed.ok) {
+    const found = parsed.problems.map((line) => problemOf(line, 'stop'));
+    return [...texts, ...found.filter((p) => !unreadable.value.has(p.field))];
+  }
   const found = checkSheet(parsed.sheet).flatMap(({ level, text }): Problem[] =>
     level === 'note' ? [] : [problemOf(text, level)],
   );

@@ -17,6 +17,9 @@ export const footage = signal<Footage | null>(null);
 export const opening = signal<Opening | null>(null);
 export const footageProblem = signal<string | null>(null);
 
+/** Why the picture of a reduction from the log is not shown. */
+export const footageGone = signal<string | null>(null);
+
 /** The last part of a path of any system. */
 export function nameOfPath(path: string): string {
   return path.split(/[\\/]/).at(-1) || path;
@@ -48,6 +51,7 @@ export async function loadDropped(file: File): Promise<Footage | null> {
 export function showFootage(next: Footage | null): void {
   const before = footage.value;
   footage.value = next;
+  footageGone.value = null;
   if (before && before.footageId !== next?.footageId)
     void api.footage[':id'].$delete({ param: { id: before.footageId } }).catch(() => undefined); // it is closed at the end anyway
 }

@@ -4,7 +4,7 @@ import { answered, api, lineOf } from './api.ts';
 import { replaceDraft, sheetFolder, sheetPath } from './draft.ts';
 import { draftOf } from './draftSheet.ts';
 import { afterLeaving, carriedOver, show } from './drop.ts';
-import { footageProblem, loadFootage } from './footage.ts';
+import { footageGone, footageProblem, loadFootage } from './footage.ts';
 import { panel } from './panel.ts';
 import { reduceProblem, reduction } from './reduction.ts';
 
@@ -14,8 +14,6 @@ export const saveProblem = signal<string | null>(null);
 export const saving = signal(false);
 /** What checking the chain said last. */
 export const chainSaid = signal<{ readonly sound: boolean; readonly text: string } | null>(null);
-/** Why the pictures of a reduction from the log are not shown. */
-export const footageGone = signal<string | null>(null);
 
 export async function readLog(): Promise<void> {
   try {
@@ -55,10 +53,10 @@ export function openFromLog(id: number): void {
       sheetFolder.value = null;
       sheetPath.value = null;
       carriedOver.value = null;
-      footageGone.value = null;
       reduceProblem.value = null;
       reduction.value = { result: row.result, draft, jobId: null, savedId: row.id };
       panel.value = 'result';
+      show(null);
       await showFootageOf(row);
     } catch (error) {
       logProblem.value = lineOf(error);
@@ -72,7 +70,6 @@ async function showFootageOf({ footagePath, footageSha256 }: ReductionSummary): 
     show(found);
     return;
   }
-  show(null);
   footageGone.value = found
     ? `The file at ${footagePath} is not the footage that was reduced (its SHA-256 differs), so no picture is shown.`
     : footageProblem.value;

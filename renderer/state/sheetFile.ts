@@ -6,6 +6,7 @@ import { draft, emptyDraft, replaceDraft, sheetFolder, sheetPath } from './draft
 import { draftOf, sheetJson } from './draftSheet.ts';
 import { afterLeaving, carriedOver, show, wholePath } from './drop.ts';
 import { footage, loadFootage } from './footage.ts';
+import { panel } from './panel.ts';
 import { reduceProblem, reduction } from './reduction.ts';
 
 export const sheetProblem = signal<string | null>(null);
@@ -21,9 +22,11 @@ export function openSheet(path: string): void {
       sheetFolder.value = opened.folder;
       sheetPath.value = opened.path;
       sheetProblem.value = null;
+      panel.value = 'sheet';
       carriedOver.value = null;
       reduction.value = null;
       reduceProblem.value = null;
+      show(null); // not the old picture under the new sheet
       show(await loadFootage(wholePath(opened.sheet.footage.path)));
     } catch (error) {
       sheetProblem.value = lineOf(error);

@@ -12,6 +12,7 @@ export async function openSheetByPath(page: Page, path: string): Promise<void> {
   await page.getByRole('banner').getByRole('button', { name: 'Open sheet…' }).click();
   await page.getByLabel('Whole path').fill(path);
   await page.keyboard.press('Enter');
+  await page.getByRole('form', { name: 'Sheet' }).getByText(path).waitFor();
   await shownFrame(page, 0);
 }
 
@@ -36,9 +37,9 @@ export function mark(page: Page, name: string) {
   return page.locator('.picture').getByRole('button', { name });
 }
 
-/** What axe finds grave in the window as it is now. */
-export async function graveFaults(page: Page): Promise<string[]> {
-  const { violations } = await new AxeBuilder({ page }).analyze();
+/** What axe finds grave in the window as it is now, or in one part of it. */
+export async function graveFaults(page: Page, part = 'body'): Promise<string[]> {
+  const { violations } = await new AxeBuilder({ page }).include(part).analyze();
   return violations
     .filter((v) => v.impact === 'serious' || v.impact === 'critical')
     .map((v) => `${v.id}: ${v.nodes.map((n) => n.html).join(' | ')}`);
