@@ -42,8 +42,10 @@ export interface Follower {
   finish(): Sighting[];
 }
 
-/** Frames of which the prediction is made. */
-const memory = 5;
+/** Places of which the next frame is predicted: the acceleration of a tip changes too fast for more. */
+const nextFrom = 3;
+/** Places of which a prediction across a gap is made: there noise counts for more than the change of acceleration. */
+const acrossGapFrom = 8;
 /** A body out of sight for longer is lost: what comes back may be another. */
 export const longestGap = 20;
 /** Below this the patch is not the body, whatever the light. */
@@ -96,9 +98,9 @@ export function startFollower(
   let lost = false;
 
   const remember = (n: number, x: number, y: number) => {
-    frames = [...frames, n].slice(-memory);
-    xs = [...xs, x].slice(-memory);
-    ys = [...ys, y].slice(-memory);
+    frames = [...frames, n].slice(-acrossGapFrom);
+    xs = [...xs, x].slice(-acrossGapFrom);
+    ys = [...ys, y].slice(-acrossGapFrom);
   };
   const sighting = (n: number, state: BodyState, m: Match | null): Sighting => ({
     n,
@@ -114,9 +116,10 @@ export function startFollower(
 
   /** The best acceptable match near where the body is expected. */
   const look = (picture: Picture, n: number, brightness: number): Match | null => {
-    const px = predict(frames, xs, n);
-    const py = predict(frames, ys, n);
     const gap = Math.abs(n - frames[frames.length - 1]);
+    const last = gap === 1 ? -nextFrom : -acrossGapFrom;
+    const px = predict(frames.slice(last), xs.slice(last), n);
+    const py = predict(frames.slice(last), ys.slice(last), n);
     const speedPx = Math.hypot(px.rate, py.rate);
     const blurred = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
     const near = matcher.match(picture, blurred, px.value, py.value, noise, usedPlate, brightness);

@@ -1,6 +1,7 @@
 import { settle } from '../../analysis/sheet/assumptions.ts';
 import type { Sheet, SheetBody } from '../../analysis/sheet/sheet.ts';
 import { bridgeGaps } from '../../analysis/track/bridge.ts';
+import { calibrateUncertainty } from '../../analysis/track/calibrateUncertainty.ts';
 import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
 import { plateOf } from '../../analysis/track/plate.ts';
@@ -118,7 +119,7 @@ export async function followBodies(
     index,
     firstFrame,
     lastFrame,
-    tracks: runs.map((run) => trackOf(run.placed.id, bridgeGaps(run.sightings))),
+    tracks: runs.map((run) => calibrateUncertainty(trackOf(run.placed.id, bridgeGaps(run.sightings)))),
   };
 }
 
