@@ -21,7 +21,7 @@ const equatorMps2 = 9.7803267715;
 const somiglianaK = 0.001931851353;
 const eccentricitySquared = 0.0066943800229;
 /** Decrease with height in free air. */
-export const freeAirPerS2 = 3.086e-6;
+const freeAirPerS2 = 3.086e-6;
 
 /** Gravity on the GRS80 ellipsoid after Somigliana, less the free-air decrease. */
 export function normalGravity(latitudeDeg: number, heightM: number): number {

@@ -6,7 +6,7 @@ import { exampleSheet } from '../sheet/exampleSheet.ts';
 import { sphereDrop } from './ballTruth.ts';
 import { extensionTimeReduced, shareFallen } from './foldedTetherTruth.ts';
 
-export const lengthM = 0.9;
+const lengthM = 0.9;
 export const gMps2 = 9.8123;
 const unitS = Math.sqrt(lengthM / gMps2);
 const extensionS = extensionTimeReduced * unitS;
