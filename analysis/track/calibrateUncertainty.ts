@@ -1,8 +1,10 @@
 import type { Track } from './track.ts';
 
-/** Points to a side of the local fit: long against the few frames over which a codec's errors hang together. */
-const reach = 15;
-const degree = 4;
+/** Points to a side of the local fit and its degree. Errors of a codec hang together over few frames or over many: both. */
+const scales = [
+  { reach: 15, degree: 4 },
+  { reach: 40, degree: 6 },
+];
 /** Fewer measured frames than this say nothing of their scatter. */
 const leastPoints = 60;
 
@@ -11,13 +13,14 @@ const leastPoints = 60;
  * that is larger: in coded footage the noise of the pixels says too little (it covers 25 to 70 % of the errors, shared limits,
  * section A), because the codec's errors are alike over many pixels.
  *
- * The scatter is the median of the standardised distances from a local polynomial of degree 4 over 31 frames, so that the few
- * frames in which the motion is not smooth (release, extension) do not count. A constant offset stays unseen.
+ * The scatter is the median of the standardised distances from a local polynomial, so that the few frames in which the motion
+ * is not smooth (release, extension) do not count; of 31 frames with degree 4 and of 81 with degree 6 the larger. A constant
+ * offset stays unseen.
  */
 export function calibrateUncertainty(track: Track): Track {
   const data = Array.from(track.frame.keys()).filter((i) => track.state[i] === 'measured');
   const widen = (positions: Float64Array, u: Float64Array): Float64Array => {
-    const factor = Math.max(1, scatterOver(data, track.frame, positions, u));
+    const factor = Math.max(1, ...scales.map((scale) => scatterOver(data, track.frame, positions, u, scale)));
     return u.map((v, i) => (track.state[i] === 'measured' ? factor * v : v));
   };
   return { ...track, uXPx: widen(track.xPx, track.uXPx), uYPx: widen(track.yPx, track.uYPx) };
@@ -29,9 +32,10 @@ function scatterOver(
   frame: Int32Array,
   positions: Float64Array,
   u: Float64Array,
+  { reach, degree }: (typeof scales)[number],
 ): number {
   if (data.length < leastPoints) return 1;
-  const { weights, leverage } = middleWeights();
+  const { weights, leverage } = middleWeights(reach, degree);
   const sizes: number[] = [];
   for (let k = reach; k < data.length - reach; k++) {
     // Only where the frames follow one another: the weights are for even times.
@@ -45,8 +49,8 @@ function scatterOver(
   return sizes[sizes.length >> 1] / 0.6745; // median of |N(0, 1)|
 }
 
-/** Savitzky-Golay weights of the middle point for degree 4 (the same as for 5), by Gram polynomials of even order. */
-function middleWeights(): { weights: Float64Array; leverage: number } {
+/** Savitzky-Golay weights of the middle point for an even degree (the same as for the next odd one), by Gram polynomials of even order. */
+function middleWeights(reach: number, degree: number): { weights: Float64Array; leverage: number } {
   const n = 2 * reach + 1;
   const basis: Float64Array[] = [];
   for (let order = 0; order <= degree; order += 2) {
