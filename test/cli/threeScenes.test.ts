@@ -44,7 +44,7 @@ describe.each(['clean', 'noisy', 'coded'])('tetherfall reduce: scene %s', (name)
   const untilExtension = () =>
     result.frames
       .map((frame) => ({ frame, true: truth.frames[frame.n] }))
-      .filter((f) => f.true.timeS <= truth.extension.lowest.timeS);
+      .filter((f) => f.true.timeS <= truth.extension.farthest.timeS);
 
   it('ends well and says where everything is', () => {
     expect(run.status).toBe(0);
@@ -54,7 +54,8 @@ describe.each(['clean', 'noisy', 'coded'])('tetherfall reduce: scene %s', (name)
   });
 
   it('gives the extension time within 0.5 %', () => {
-    const { sinceReleaseS } = truth.extension.lowest;
+    // The sheet states the separation, so extension is the tip's greatest distance from its anchor, in the result as in the truth.
+    const { sinceReleaseS } = truth.extension.farthest;
     const { value, u } = keyValue('tip.extensionTime');
     expect(Math.abs(value / sinceReleaseS - 1)).toBeLessThan(0.005);
     expect(Math.abs(value - sinceReleaseS)).toBeLessThan(3 * u);
@@ -87,7 +88,7 @@ describe.each(['clean', 'noisy', 'coded'])('tetherfall reduce: scene %s', (name)
       for (const id of ['tip', 'ball']) expect(frame.bodies[id].state).not.toBe('lost');
     }
     expect(untilExtension()).toHaveLength(
-      truth.frames.filter((f) => f.timeS <= truth.extension.lowest.timeS).length,
+      truth.frames.filter((f) => f.timeS <= truth.extension.farthest.timeS).length,
     );
   });
 
