@@ -13,14 +13,11 @@ export function LaneValues({ lane }: { readonly lane: LaneData }) {
       </span>
       {at === null
         ? null
-        : lane.traces.map((trace) => {
-            const text = valueAt(trace, at, lane.unit);
-            return text === null ? null : (
-              <span key={trace.id} class={`figures ink-text-${trace.role}`}>
-                {trace.letter} {text}
-              </span>
-            );
-          })}
+        : lane.traces.map((trace) => (
+            <span key={trace.id} class={`figures ink-text-${trace.role}`}>
+              {trace.letter} {valueAt(trace, at, lane.unit) ?? 'no value'}
+            </span>
+          ))}
     </div>
   );
 }

@@ -44,7 +44,7 @@ export function LanesHead() {
                     hiddenModels.value = next;
                   }}
                 />
-                <Sample colour={theoryColour} dash={dash} /> {letter} {short}
+                <Sample colour={theoryColour} dash={dash} /> {letter} <span class="legend-text">{short}</span>
               </label>
             );
           })}

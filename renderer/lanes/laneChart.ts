@@ -12,6 +12,7 @@ import type { LaneData, Trace } from '../state/lanes.ts';
 import { bandPlugin, setBands } from './bandPlugin.ts';
 import { bodyLooks, otherLook, theoryColour } from './colours.ts';
 import { cursorPlugin } from './cursorPlugin.ts';
+import { withGaps } from './gaps.ts';
 import { laneRange } from './laneRange.ts';
 import { letterPlugin } from './letterPlugin.ts';
 
@@ -104,12 +105,20 @@ export function fillLaneChart(chart: LaneChart, lane: LaneData, fromS: number, t
   ];
   setBands(
     chart as Chart,
-    lane.traces.map(({ timeS, value, u, role }) => ({
-      timeS,
-      low: value.map((v, i) => v - k95 * (u[i] ?? Number.NaN)),
-      high: value.map((v, i) => v + k95 * (u[i] ?? Number.NaN)),
-      colour: (bodyLooks[role] ?? otherLook).band,
-    })),
+    lane.traces.map(({ timeS, value, u, role }) => {
+      const edge = (side: 1 | -1) =>
+        withGaps(
+          timeS,
+          value.map((v, i) => v + side * k95 * (u[i] ?? Number.NaN)),
+        );
+      const low = edge(-1);
+      return {
+        timeS: low.map((p) => p.x),
+        low: low.map((p) => p.y),
+        high: edge(1).map((p) => p.y),
+        colour: (bodyLooks[role] ?? otherLook).band,
+      };
+    }),
   );
   const { x, y } = chart.options.scales ?? {};
   const range = laneRange(lane, fromS, toS);
@@ -122,7 +131,7 @@ function curveDataset({ letter, role, timeS, value }: Trace): ChartDataset<'line
   const look = bodyLooks[role] ?? otherLook;
   return {
     label: letter,
-    data: xy(timeS, value),
+    data: withGaps(timeS, value),
     borderColor: look.colour,
     borderWidth: 1.75,
     borderDash: [...look.dash],

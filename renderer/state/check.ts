@@ -19,7 +19,7 @@ export interface Problem {
 export const missingIsShown = signal(false);
 
 /** What is wrong or missing in the sheet as it stands. */
-export const problems = computed<readonly Problem[]>(() => {
+const problems = computed<readonly Problem[]>(() => {
   const texts = [...unreadable.value].map(
     ([field, { problem }]): Problem => ({ field, text: problem, level: 'stop', missing: false }),
   );

@@ -52,7 +52,7 @@ export interface Draft {
   readonly limits: readonly DraftLimit[];
 }
 
-export interface DraftBar {
+interface DraftBar {
   readonly a?: Point;
   readonly b?: Point;
   readonly lengthM?: number;

@@ -4,7 +4,7 @@ import { frameNumber, goToFrame } from './frames.ts';
 import { letterOfBody } from './marks.ts';
 import { reduction, resultFrame, roleOf } from './reduction.ts';
 
-export type LaneName = 'position' | 'velocity' | 'acceleration';
+type LaneName = 'position' | 'velocity' | 'acceleration';
 export type Axis = 'y' | 'x';
 
 export interface Trace {
@@ -19,7 +19,7 @@ export interface Trace {
   readonly points: readonly { readonly timeS: number; readonly value: number }[];
 }
 
-export interface TheoryTrace {
+interface TheoryTrace {
   readonly model: Theory['model'];
   readonly body: string;
   readonly role: string;
@@ -104,7 +104,7 @@ function pointsOf(timeS: readonly number[], measuredM: readonly number[], name: 
 }
 
 /** First and last time of the frames that were reduced [s]. */
-export const wholeTime = computed(() => {
+const wholeTime = computed(() => {
   const frames = reduction.value?.result.frames ?? [];
   const first = frames[0]?.timeS ?? 0;
   return { fromS: first, toS: frames.at(-1)?.timeS ?? first + 1 };
