@@ -35,8 +35,8 @@ const leastFallM = 0.02;
  * coincides to 0.05 % of the time for small separation (linked-tether integration, shared published values, section a) and is
  * later for a wide one (0.4 % at a separation of 0.3 of the length).
  *
- * Between frames the instant comes from the parabola through the three points about the extreme; because a tip can turn round
- * within a frame or two, it is taken to be uncertain by a rectangle of half a frame to either side.
+ * Between frames the instant is where the way in and the way back meet, each prolonged as a line from its last two frames;
+ * because a tip can turn round within a frame, it is taken to be uncertain by a rectangle of half a frame to either side.
  *
  * @param releaseS  release of the tip
  * @param startYM   height of the tip before release
@@ -114,38 +114,41 @@ function atExtreme(
   seenAs: Extension['seenAs'],
 ): Extension {
   const uTimeS = frameTimeS / Math.sqrt(12);
-  if (k === 0 || k === yM.length - 1) return { timeS: timeS[k], uTimeS, yM: yM[k], uYM: uYM[k], seenAs };
-  const t = [timeS[k - 1], timeS[k], timeS[k + 1]] as const;
-  const atS = vertex(t, [reachM[k - 1], reachM[k], reachM[k + 1]]) ?? timeS[k];
-  const height = parabola(t, [yM[k - 1], yM[k], yM[k + 1]], atS);
-  const stepM = Math.max(Math.abs(yM[k] - yM[k - 1]), Math.abs(yM[k + 1] - yM[k]));
+  const plain = { timeS: timeS[k], uTimeS, yM: yM[k], uYM: uYM[k], seenAs };
+  if (k < 2 || k > yM.length - 3) return plain;
+  const point = (i: number): Point => [timeS[i], reachM[i]];
+  const before = Math.abs(lineAt(point(k - 2), point(k - 1), timeS[k]) - reachM[k]);
+  const after = Math.abs(lineAt(point(k + 2), point(k + 1), timeS[k]) - reachM[k]);
+  // The extreme frame lies on the way in or on the way back, whichever predicts it better: the turn is on its other side.
+  const [first, second] = before <= after ? [k, k + 1] : [k - 1, k];
+  const meetS = meeting(point(first - 1), point(first), point(second), point(second + 1));
+  const atS = Math.min(timeS[second], Math.max(timeS[first], meetS ?? (timeS[first] + timeS[second]) / 2));
+  const height = (i: number): Point => [timeS[i], yM[i]];
+  const incoming = lineAt(height(first - 1), height(first), atS);
   return {
     timeS: atS,
     uTimeS,
-    yM: height,
-    // A tip that turns within a frame need not follow the parabola: a tenth of its way from frame to frame.
-    uYM: Math.hypot(uYM[k], height - yM[k], stepM / 10),
+    yM: incoming,
+    // A tip need not go on along its line until it turns: a tenth of its way from frame to frame.
+    uYM: Math.hypot(
+      uYM[first],
+      (incoming - lineAt(height(second), height(second + 1), atS)) / 2,
+      (yM[second] - yM[first]) / 10,
+    ),
     seenAs,
   };
 }
 
-type Three = readonly [number, number, number];
+type Point = readonly [timeS: number, valueM: number];
 
-/** Divided differences of three points: the times need not be even. */
-function differences(t: Three, v: Three): { first: number; second: number } {
-  const first = (v[1] - v[0]) / (t[1] - t[0]);
-  return { first, second: ((v[2] - v[1]) / (t[2] - t[1]) - first) / (t[2] - t[0]) };
+function lineAt([ta, va]: Point, [tb, vb]: Point, atS: number): number {
+  return vb + ((vb - va) / (tb - ta)) * (atS - tb);
 }
 
-function parabola(t: Three, v: Three, atS: number): number {
-  const { first, second } = differences(t, v);
-  return v[0] + (first + second * (atS - t[1])) * (atS - t[0]);
-}
-
-/** Time of the parabola's maximum between the outer points; null when it has none there. */
-function vertex(t: Three, v: Three): number | null {
-  const { first, second } = differences(t, v);
-  if (second >= 0) return null;
-  const atS = (t[0] + t[1]) / 2 - first / (2 * second);
-  return atS >= t[0] && atS <= t[2] ? atS : null;
+/** Time at which the line through the first two points meets that through the last two; null when they do not turn. */
+function meeting(a: Point, b: Point, c: Point, d: Point): number | null {
+  const rateIn = (b[1] - a[1]) / (b[0] - a[0]);
+  const rateBack = (d[1] - c[1]) / (d[0] - c[0]);
+  if (rateIn <= rateBack) return null;
+  return (c[1] - rateBack * c[0] - (b[1] - rateIn * b[0])) / (rateIn - rateBack);
 }

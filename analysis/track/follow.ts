@@ -10,6 +10,7 @@ import { cutOut, roundMask } from './patchModel.ts';
 import { brightnessOf } from './plate.ts';
 import { predict } from './predict.ts';
 import type { Picture, WideSearch } from './track.ts';
+import { makeTurnGauge } from './turning.ts';
 
 /** A body as it was placed. */
 export interface PlacedBody {
@@ -50,6 +51,10 @@ const acrossGapFrom = 8;
 export const longestGap = 20;
 /** Below this the patch is not the body, whatever the light. */
 const leastScore = 0.5;
+/** By so much the usual score sinks before a body is taken to turn. */
+const turningFall = 0.01;
+/** … if the residual looks like a turn by at least this much. */
+const turnLikeness = 0.4;
 /** Light on a body changes by less than this factor from frame to frame; noise fitted as the body has hardly any contrast. */
 const leastGain = 0.4;
 /** A score that falls by this much, or a body this far from where it was expected, asks for a wide search to be sure. */
@@ -95,6 +100,11 @@ export function startFollower(
   let xs: number[] = [];
   let ys: number[] = [];
   let usualScore = 1;
+  const gauge = makeTurnGauge(half);
+  let bestScore = 0;
+  let turning = false;
+  /** Sightings up to which the body looked as at rest: these can be matched again with one model. */
+  let steady = 0;
   let lost = false;
 
   const remember = (n: number, x: number, y: number) => {
@@ -150,6 +160,13 @@ export function startFollower(
     );
   };
 
+  /** A score that has sunk, with the blur in the model, and a residual that a turn of the body would leave. */
+  const turns = (picture: Picture, found: Match, brightness: number): boolean => {
+    bestScore = Math.max(bestScore, usualScore);
+    if (!usedPlate || usualScore > bestScore - turningFall) return false;
+    return gauge.likeness(picture, model, found, usedPlate, brightness) > turnLikeness;
+  };
+
   /** Where the body is in the next frame. */
   const follow = (n: number, picture: Picture): Sighting => {
     const brightness = usedPlate ? brightnessOf(picture, usedPlate) : 1;
@@ -187,7 +204,13 @@ export function startFollower(
     usualScore += 0.1 * (Math.min(found.score, 1) - usualScore);
     cuttings.keep(n, picture, brightness, found.xPx, found.yPx);
     const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
-    if (learner?.learn(picture, usedPlate, brightness, found.xPx, found.yPx, blurPx)) model = learner.model();
+    turning ||= sightings.length > still.frames && turns(picture, found, brightness);
+    if (learner && usedPlate && turning) {
+      if (found.score > leastScore) learner.refresh(picture, usedPlate, brightness, found.xPx, found.yPx);
+      model = learner.model();
+    } else if (learner?.learn(picture, usedPlate, brightness, found.xPx, found.yPx, blurPx))
+      model = learner.model();
+    if (!turning) steady = sightings.length + 1;
     return sighting(n, 'measured', found);
   };
 
@@ -202,7 +225,7 @@ export function startFollower(
         const speeds = speedsOf(sightings);
         if (round > 0) learner?.restart();
         if (round > 0 && learner) {
-          for (const [i, cut] of cuttings.of(sightings)) {
+          for (const [i, cut] of cuttings.of(sightings.slice(0, steady))) {
             const s = sightings[i];
             const speed = speeds[i];
             learner.learn(
@@ -230,7 +253,7 @@ export function startFollower(
           );
           if (hidden) cuttings.disregard(centreX, centreY, 2 * half + 1, hidden);
         }
-        for (const [i, cut] of cuttings.of(sightings)) {
+        for (const [i, cut] of cuttings.of(sightings.slice(0, steady))) {
           const s = sightings[i];
           const speed = speeds[i];
           const blurred = blurModel(model, speed.x * exposureShare, speed.y * exposureShare);

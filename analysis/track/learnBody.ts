@@ -69,24 +69,26 @@ export interface MovingMean {
 }
 
 /**
- * The model of a body in front of a plate: coverage α and appearance times coverage A. Rest frames alone give
+ * Appearance times coverage A of a body with coverage α in front of a plate. Rest frames alone give
  * A = S - (1 - α) B, exact for the background they had; the moving frames' mean makes it right for background in general.
  */
-export function coveredModel(
+export function coveredAppearance(
   still: StillBody,
   behind: Float64Array,
   coverage: Float64Array,
   moving: MovingMean | null,
-): BodyModel {
-  const { half } = still;
-  const outer = half + REACH;
-  const wide = 2 * outer + 1;
-  const side = 2 * half + 1;
+): Float64Array {
   const share = moving ? moving.frames / (moving.frames + still.frames) : 0;
-  const appearance = Float64Array.from(still.mean, (s, i) => {
+  return still.mean.map((s, i) => {
     const atRest = s - (1 - coverage[i]) * behind[i];
     return moving ? atRest + share * (moving.appearance[i] - atRest) : atRest;
   });
+}
+
+/** A model from appearance times coverage and coverage, both on the window with its border. */
+export function coveredModel(half: number, appearance: Float64Array, coverage: Float64Array): BodyModel {
+  const wide = 2 * (half + REACH) + 1;
+  const side = 2 * half + 1;
   const mask = new Float64Array(side * side);
   for (let row = 0; row < side; row++) {
     for (let column = 0; column < side; column++) {
@@ -101,8 +103,8 @@ export function coveredModel(
   }
   return {
     half,
-    appearance: makeLayer(appearance, half),
-    coverage: makeLayer(Float64Array.from(coverage), half),
+    appearance: makeLayer(appearance.slice(), half),
+    coverage: makeLayer(coverage.slice(), half),
     mask,
   };
 }

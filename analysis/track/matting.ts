@@ -12,6 +12,11 @@ export interface Matting {
   /** One frame in which the body's zero is at (xPx, yPx). */
   add(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): void;
   readonly frames: number;
+  /** The frame about the body's zero, and the plate there, of the frame added or looked at last. */
+  readonly seen: Float64Array;
+  readonly behind: Float64Array;
+  /** Only looks: fills `seen` and `behind`; false when the window reaches out of the picture. */
+  look(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): boolean;
   /**
    * Coverage on the window with its border: the slope weighed against the first guess by how well the background told it.
    *
@@ -39,21 +44,29 @@ export function startMatting(half: number): Matting {
   const behind = new Float64Array(n);
   let frames = 0;
 
-  return {
-    add(picture, plate, brightness, xPx, yPx) {
-      const cx = Math.round(xPx);
-      const cy = Math.round(yPx);
-      if (cx - reach < 0 || cy - reach < 0 || cx + reach >= picture.widthPx || cy + reach >= picture.heightPx)
-        return;
-      for (let row = 0; row < wide; row++) {
-        const from = (cy - reach + row) * picture.widthPx + cx - reach;
-        for (let column = 0; column < wide; column++) {
-          cut[row * wide + column] = picture.luma[from + column] / brightness;
-          cutB[row * wide + column] = plate.level[from + column];
-        }
+  const look = (picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): boolean => {
+    const cx = Math.round(xPx);
+    const cy = Math.round(yPx);
+    if (cx - reach < 0 || cy - reach < 0 || cx + reach >= picture.widthPx || cy + reach >= picture.heightPx)
+      return false;
+    for (let row = 0; row < wide; row++) {
+      const from = (cy - reach + row) * picture.widthPx + cx - reach;
+      for (let column = 0; column < wide; column++) {
+        cut[row * wide + column] = picture.luma[from + column] / brightness;
+        cutB[row * wide + column] = plate.level[from + column];
       }
-      resample(cut, wide, xPx - cx, yPx - cy, seen, side);
-      resample(cutB, wide, xPx - cx, yPx - cy, behind, side);
+    }
+    resample(cut, wide, xPx - cx, yPx - cy, seen, side);
+    resample(cutB, wide, xPx - cx, yPx - cy, behind, side);
+    return true;
+  };
+
+  return {
+    seen,
+    behind,
+    look,
+    add(picture, plate, brightness, xPx, yPx) {
+      if (!look(picture, plate, brightness, xPx, yPx)) return;
       for (let u = 0; u < n; u++) {
         b[u] += behind[u];
         bb[u] += behind[u] * behind[u];
