@@ -65,7 +65,7 @@ export function HeadBar() {
       </div>
       <OpeningRow />
       <JobRow />
-      <Line text={windowProblem.value} />
+      <Line text={windowProblem.value} close={() => (windowProblem.value = null)} />
       <Line text={footageProblem.value} close={() => (footageProblem.value = null)} />
       <Line text={sheetProblem.value} close={() => (sheetProblem.value = null)} />
       <Line text={reduceProblem.value} close={() => (reduceProblem.value = null)} />

@@ -3,7 +3,7 @@ import type { ListedFolder } from '../../main/api/listFolder.ts';
 import { answered, api, lineOf } from './api.ts';
 import { openFootage } from './drop.ts';
 import { footage } from './footage.ts';
-import { program } from './program.ts';
+import { program, windowProblem } from './program.ts';
 import { openSheet, saveSheetAs } from './sheetFile.ts';
 
 export type Purpose = 'openFootage' | 'openSheet' | 'saveSheet';
@@ -25,8 +25,12 @@ export async function askForFile(purpose: Purpose, suggestedName = 'sheet.json')
     purpose === 'saveSheet'
       ? api.shell['save-file'].$post({ json: { kind: 'sheet', suggestedName } })
       : api.shell['open-file'].$post({ json: { kind: purpose === 'openFootage' ? 'footage' : 'sheet' } });
-  const { path } = await answered(asked);
-  if (path !== null) takeFile(purpose, path);
+  try {
+    const { path } = await answered(asked);
+    if (path !== null) takeFile(purpose, path);
+  } catch (error) {
+    windowProblem.value = lineOf(error);
+  }
 }
 
 export function takeFile(purpose: Purpose, path: string): void {
