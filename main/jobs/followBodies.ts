@@ -1,18 +1,20 @@
 import { settle } from '../../analysis/sheet/assumptions.ts';
+import type { Finding } from '../../analysis/sheet/result.ts';
 import type { Sheet, SheetBody } from '../../analysis/sheet/sheet.ts';
 import { bridgeGaps } from '../../analysis/track/bridge.ts';
 import { calibrateUncertainty } from '../../analysis/track/calibrateUncertainty.ts';
+import { doubledFrames, withoutFrames } from '../../analysis/track/doubledFrames.ts';
 import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
-import { halfOf } from '../../analysis/track/patchModel.ts';
 import { plateOf } from '../../analysis/track/plate.ts';
 import { type Rest, startRest } from '../../analysis/track/rest.ts';
 import { startSampling } from '../../analysis/track/sampling.ts';
 import type { Picture, Track, WideSearch } from '../../analysis/track/track.ts';
-import { trackability } from '../../analysis/track/trackability.ts';
 import { trackOf } from '../../analysis/track/trackOf.ts';
 import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
 import { Refusal } from '../refusal.ts';
+import { doubledFindings, saturationFindings } from './followFindings.ts';
 import { startPace } from './pace.ts';
+import { noiseOrRefuse, refuseMarksOutside } from './placing.ts';
 import type { Progress } from './progress.ts';
 
 export interface Followed {
@@ -20,6 +22,7 @@ export interface Followed {
   readonly firstFrame: number;
   readonly lastFrame: number;
   readonly tracks: readonly Track[];
+  readonly findings: readonly Finding[];
 }
 
 /** Standard uncertainty of a place set by hand [px] where nothing better is known. */
@@ -115,11 +118,20 @@ export async function followBodies(
       run.sightings.unshift(...back.finish().slice(1).reverse());
     }
   }
+  const doubled = doubledFrames(
+    runs.map((run) => run.sightings),
+    index.frameHashes,
+  );
+  const tracks = runs.map((run) => {
+    const seen = withoutFrames(run.sightings, doubled);
+    return calibrateUncertainty(trackOf(run.placed.id, bridgeGaps(seen)));
+  });
   return {
     index,
     firstFrame,
     lastFrame,
-    tracks: runs.map((run) => calibrateUncertainty(trackOf(run.placed.id, bridgeGaps(run.sightings)))),
+    tracks,
+    findings: [...saturationFindings(runs), ...doubledFindings(doubled)],
   };
 }
 
@@ -185,63 +197,5 @@ function exposureShareOf(sheet: Sheet, index: FootageIndex): number {
   if (clock.kind === 'timestamps' || first === null || last === null || last === first) return 0;
   return (
     (camera.exposureS * (index.frameCount - 1)) / (((last - first) * index.timeBase.num) / index.timeBase.den)
-  );
-}
-
-/** The pixels' noise around a body as it was placed; refuses a place that cannot be followed. */
-function noiseOrRefuse(body: PlacedBody, picture: Picture): number {
-  const half = halfOf(body.patchPx);
-  const where = `bodies: "${body.id}" at x ${body.xPx}, y ${body.yPx} in frame ${body.frame}`;
-  if (2 * half + 1 > Math.min(picture.widthPx, picture.heightPx)) {
-    throw new Refusal(
-      'patchTooLarge',
-      2,
-      `${where}: its patch of ${body.patchPx} px is larger than the picture (${picture.widthPx} × ${picture.heightPx} px); make patchPx smaller.`,
-    );
-  }
-  const judged = trackability(picture, Math.round(body.xPx), Math.round(body.yPx), half);
-  if (judged.ok) return judged.noise;
-  const reason =
-    judged.reason === 'featureless'
-      ? 'the patch shows nothing but an even background'
-      : 'the patch shows only a straight edge, along which it could slide';
-  throw new Refusal(
-    'bodyFeatureless',
-    2,
-    `${where}: ${reason}; place it on the body, or make patchPx larger.`,
-  );
-}
-
-function refuseMarksOutside(sheet: Sheet, picture: Picture): void {
-  const marks = [
-    ...sheet.bodies.flatMap((b) => [
-      { name: `bodies: "${b.id}"`, x: b.x, y: b.y },
-      ...(b.marks ?? []).map((m) => ({
-        name: `bodies: the mark of "${b.id}" in frame ${m.frame}`,
-        x: m.x,
-        y: m.y,
-      })),
-    ]),
-    ...sheet.scale.bars.flatMap((bar, i) => [
-      { name: `scale.bars[${i}].a`, ...bar.a },
-      { name: `scale.bars[${i}].b`, ...bar.b },
-    ]),
-    ...(sheet.scale.plumb
-      ? [
-          { name: 'scale.plumb.a', ...sheet.scale.plumb.a },
-          { name: 'scale.plumb.b', ...sheet.scale.plumb.b },
-        ]
-      : []),
-    ...(sheet.scale.fiducials ?? []).map((f, i) => ({ name: `scale.fiducials[${i}]`, x: f.x, y: f.y })),
-  ];
-  const outside = marks.filter(
-    (m) => m.x < -0.5 || m.y < -0.5 || m.x > picture.widthPx - 0.5 || m.y > picture.heightPx - 0.5,
-  );
-  if (outside.length === 0) return;
-  const named = outside.map((m) => `${m.name} at x ${m.x}, y ${m.y}`).join('; ');
-  throw new Refusal(
-    'markOutside',
-    2,
-    `Outside the picture (${picture.widthPx} × ${picture.heightPx} px): ${named}. Set the mark again.`,
   );
 }
