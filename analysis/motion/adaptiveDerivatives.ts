@@ -71,18 +71,17 @@ export function adaptiveDerivatives(
           halfS,
           at,
         );
-        adequate.forEach((ok, k) => {
-          if (!ok) bias2[k] = Number.POSITIVE_INFINITY;
-        });
         const into = chosen[quantity];
-        forEachBetween(timeS, at, low[quantity], uOf(low, quantity), bias2, (i, value, u, b2) => {
-          const score = b2 + u * u;
+        forEachBetween(timeS, at, low[quantity], uOf(low, quantity), bias2, (i, k, value, u, b2) => {
+          const ok = adequate[k] && adequate[Math.min(k + 1, at.length - 1)];
+          // Where no window is adequate the narrowest stands, its bias as large as the value itself.
+          const score = ok ? b2 + u * u : lastResort * halfS;
           if (!(score < least[quantity][i]) && !Number.isNaN(least[quantity][i])) return;
           if (!Number.isFinite(score)) return;
           least[quantity][i] = score;
           into.value[i] = value;
           into.uNoise[i] = u;
-          into.uBias[i] = Math.sqrt(b2);
+          into.uBias[i] = ok ? Math.sqrt(b2) : Math.max(Math.sqrt(b2), Math.abs(value));
           into.halfWindowS[i] = halfS;
           into.degree[i] = degree;
         });
@@ -123,6 +122,9 @@ function evaluationPoints({ from, to }: Segment, stride: number): Int32Array {
   if (at[at.length - 1] !== to - 1) at.push(to - 1);
   return Int32Array.from(at);
 }
+
+/** Score, per second of half-window, of a window that is not adequate: more than any that is. */
+const lastResort = 1e30;
 
 /** Mean squared standardised residual beyond which a fit plainly does not follow the points. */
 const mostResidual = 4;
@@ -193,16 +195,16 @@ function forEachBetween(
   value: Float64Array,
   u: Float64Array,
   bias2: Float64Array,
-  call: (i: number, value: number, u: number, bias2: number) => void,
+  call: (i: number, k: number, value: number, u: number, bias2: number) => void,
 ): void {
   for (let k = 0; k < at.length; k++) {
     const i = at[k];
-    call(i, value[i], u[i], bias2[k]);
+    call(i, k, value[i], u[i], bias2[k]);
     const next = at[k + 1];
     for (let j = i + 1; j < next; j++) {
       const share = (timeS[j] - timeS[i]) / (timeS[next] - timeS[i]);
       const between = (p: number, q: number) => p + share * (q - p);
-      call(j, between(value[i], value[next]), between(u[i], u[next]), between(bias2[k], bias2[k + 1]));
+      call(j, k, between(value[i], value[next]), between(u[i], u[next]), between(bias2[k], bias2[k + 1]));
     }
   }
 }
