@@ -20,7 +20,7 @@ const cells = captureRatesHz.flatMap((captureRateHz) =>
 describe('95 % intervals over synthetic records', () => {
   it.each(cells)('hold the truth at $captureRateHz Hz, $micrometres µm, ball $ball', (cell) => {
     const coverage = coverageOf(cell, records);
-    for (const quantity of ['ball.g', 'tip.releaseTime']) {
+    for (const quantity of ['ball.g', 'tip.releaseTime', 'tip.extensionTime', 'ball.dropAtExtension']) {
       expect(coverage[quantity].share, quantity).toBeGreaterThanOrEqual(leastShare);
     }
     for (const [quantity, { given }] of Object.entries(coverage)) expect(given, quantity).toBe(records);
