@@ -125,16 +125,13 @@ function atExtreme(
   const atS = Math.min(timeS[second], Math.max(timeS[first], meetS ?? (timeS[first] + timeS[second]) / 2));
   const height = (i: number): Point => [timeS[i], yM[i]];
   const incoming = lineAt(height(first - 1), height(first), atS);
+  // The tip does not go on along its line until it turns, nor does it turn before its lowest frame: between the two.
+  const lowest = Math.min(yM[first], yM[second]);
   return {
     timeS: atS,
     uTimeS,
-    yM: incoming,
-    // A tip need not go on along its line until it turns: a tenth of its way from frame to frame.
-    uYM: Math.hypot(
-      uYM[first],
-      (incoming - lineAt(height(second), height(second + 1), atS)) / 2,
-      (yM[second] - yM[first]) / 10,
-    ),
+    yM: (incoming + lowest) / 2,
+    uYM: Math.hypot(uYM[first], (incoming - lowest) / Math.sqrt(12), (yM[second] - yM[first]) / 10),
     seenAs,
   };
 }
