@@ -56,7 +56,12 @@ export function HeadBar() {
           >
             Reduce
           </button>
-          <button type="button" disabled={!isUnsaved.value || saving.value} onClick={() => void saveToLog()}>
+          <button
+            type="button"
+            title="Ctrl+Shift+S"
+            disabled={!isUnsaved.value || saving.value}
+            onClick={() => void saveToLog()}
+          >
             {reduction.value && reduction.value.savedId !== null
               ? `In the log: no. ${reduction.value.savedId}`
               : 'Save to log'}

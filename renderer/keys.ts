@@ -1,10 +1,12 @@
 import { middleOfView } from './stage/middleOfView.ts';
 import { focusMark } from './stage/Picture.tsx';
+import { bringIntoView, panBy } from './stage/viewOfPicture.ts';
 import { attemptReduce } from './state/attempt.ts';
 import { askForFile } from './state/browsing.ts';
 import { openNextInFolder } from './state/drop.ts';
 import { footage } from './state/footage.ts';
 import { goToFrame, lastFrame, stepFrames } from './state/frames.ts';
+import { saveUnsaved } from './state/log.ts';
 import { marks, placeMark, selectedId, selectedMark, selectNextUnplaced } from './state/marks.ts';
 import { togglePlaying } from './state/playing.ts';
 import { zoom, zoomBy } from './state/zoom.ts';
@@ -19,10 +21,21 @@ export function listenToKeys(): void {
   });
 }
 
+/** Ctrl and an arrow move the view over the picture, by a quarter of it. */
+const pans: Readonly<Record<string, readonly [number, number]>> = {
+  ArrowLeft: [-0.25, 0],
+  ArrowRight: [0.25, 0],
+  ArrowUp: [0, -0.25],
+  ArrowDown: [0, 0.25],
+};
+
 function withControl(event: KeyboardEvent): boolean {
-  if (event.key === 'Enter') attemptReduce();
+  const pan = takesText(event.target) ? undefined : pans[event.key];
+  if (pan) panBy(...pan);
+  else if (event.key === 'Enter') attemptReduce();
   else if (event.key.toLowerCase() === 'o' && event.shiftKey) openNextInFolder();
   else if (event.key.toLowerCase() === 'o') void askForFile('openFootage');
+  else if (event.key.toLowerCase() === 's' && event.shiftKey) void saveUnsaved();
   else if (event.key.toLowerCase() === 's') void askForFile('saveSheet');
   else return false;
   return true;
@@ -86,8 +99,10 @@ function plain(event: KeyboardEvent): boolean {
 /** Gives the focus to the selected mark, or to the picture where it is still to be placed. */
 export function focusSelected(): void {
   const mark = selectedMark.value;
-  if (mark?.at) focusMark(mark.id);
-  else document.getElementById('stage-view')?.focus();
+  if (mark?.at) {
+    bringIntoView(mark.at);
+    focusMark(mark.id);
+  } else document.getElementById('stage-view')?.focus();
 }
 
 function placeAtMiddle(): boolean {

@@ -1,3 +1,4 @@
+import { pxText } from '../parts/numberText.ts';
 import {
   assumedPlaneOffsetM,
   assumedUDownDeg,
@@ -15,6 +16,7 @@ const planeFields = ['scale.planeOffsetM', 'scale.uPlaneOffsetM', 'scale.cameraD
 
 export function ScalePart() {
   const { bars, plumb, fiducials, cameraDistanceM } = draft.value.scale;
+  const { origin } = draft.value;
   const barFields = bars.flatMap((_, i) =>
     ['lengthM', 'uLengthM', 'uMarkPx'].map((name) => `scale.bars[${i}].${name}`),
   );
@@ -81,6 +83,11 @@ export function ScalePart() {
         )}
       </fieldset>
       {fiducials ? <p class="hint">With {fiducials.length} fiducials of the sheet file.</p> : null}
+      {origin ? (
+        <p class="hint">
+          With the origin of the sheet file: x {pxText(origin.x)}, y {pxText(origin.y)} px.
+        </p>
+      ) : null}
       <NumberField field="scale.cameraDistanceM" label="Camera to bar" unit="m" />
       {cameraDistanceM === undefined ? (
         <p class="field-caution">

@@ -2,9 +2,10 @@ import { useRef } from 'preact/hooks';
 import { pxText } from '../parts/numberText.ts';
 import type { Point } from '../state/draft.ts';
 import { frameNumber } from '../state/frames.ts';
-import { type Mark, moveMark, placeMark, pointerAt, selectedId } from '../state/marks.ts';
+import { type Mark, moveMark, placeMark, pointerAt, selectedId, selectedMark } from '../state/marks.ts';
 import { cssPerPx, screenScale, shownZoom } from '../state/zoom.ts';
 import { cssOf, picturePoint } from './picturePoint.ts';
+import { bringIntoView } from './viewOfPicture.ts';
 
 const steps: Readonly<Record<string, readonly [number, number]>> = {
   ArrowLeft: [-1, 0],
@@ -39,6 +40,7 @@ export function MarkHandle({ mark, at }: { readonly mark: Mark; readonly at: Poi
         if (!step || event.ctrlKey || event.metaKey || event.altKey) return;
         const size = event.shiftKey ? 0.1 : 1;
         moveMark(mark.id, step[0] * size, step[1] * size);
+        bringIntoView(selectedMark.value?.at ?? at);
         event.preventDefault();
         event.stopPropagation();
       }}

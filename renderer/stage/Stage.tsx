@@ -1,4 +1,4 @@
-import { useEffect, useRef } from 'preact/hooks';
+import { useEffect, useLayoutEffect, useRef } from 'preact/hooks';
 import { footage } from '../state/footage.ts';
 import { frameProblem } from '../state/frames.ts';
 import { pointerAt, selectedMark } from '../state/marks.ts';
@@ -9,6 +9,7 @@ import { Picture } from './Picture.tsx';
 import { cssOf } from './picturePoint.ts';
 import { StartCard } from './StartCard.tsx';
 import { TrackStates } from './TrackStates.tsx';
+import { middleOn, seenMiddle } from './viewOfPicture.ts';
 
 /** The picture, its zoom and its frames. */
 export function Stage() {
@@ -22,6 +23,7 @@ export function Stage() {
     watch.observe(element);
     return () => watch.disconnect();
   }, []);
+  useKeptPlace(footage.value?.footageId ?? '');
   const at = selectedMark.value?.at ?? pointerAt.value;
   const inView = at && view.current ? cssOf(at.x, cssPerPx.value) - view.current.scrollLeft : 0;
   return (
@@ -51,6 +53,25 @@ export function Stage() {
       <FrameControls />
     </section>
   );
+}
+
+/** When the zoom changes, the view stays on the selected mark, or on what was in its middle. */
+function useKeptPlace(footageId: string): void {
+  const css = cssPerPx.value;
+  const before = useRef({ footageId, css, middle: seenMiddle(css) });
+  useLayoutEffect(() => {
+    const { middle } = before.current;
+    const isSame = before.current.footageId === footageId;
+    const to = selectedMark.peek()?.at ?? middle;
+    if (isSame && before.current.css !== css && to) middleOn(to);
+    before.current = { footageId, css, middle: seenMiddle(css) };
+    const view = document.getElementById('stage-view');
+    const follow = () => {
+      before.current.middle = seenMiddle(css);
+    };
+    view?.addEventListener('scroll', follow);
+    return () => view?.removeEventListener('scroll', follow);
+  }, [footageId, css]);
 }
 
 function ZoomControls() {

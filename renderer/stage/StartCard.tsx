@@ -16,7 +16,7 @@ export function StartCard() {
       </div>
       <p class="hint">
         Then fill in the sheet from 1 to 7, and reduce. Marks are set on the picture: select one in the sheet,
-        click its place, and move it by the arrow keys.
+        click its place, and move it by the arrow keys. Ctrl and an arrow key move the view.
       </p>
     </div>
   );

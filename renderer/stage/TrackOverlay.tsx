@@ -23,7 +23,7 @@ export function TrackOverlay({
             transform={`translate(${cssOf(x, css)} ${cssOf(y, css)})`}
           >
             <StateShape state={state} />
-            <text class="track-letter" x="11" y="-7">
+            <text class="track-letter" x="11" y="18">
               {state === 'measured' ? letterOfBody(id) : `${letterOfBody(id)} ${state}`}
             </text>
           </g>

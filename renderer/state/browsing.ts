@@ -4,7 +4,7 @@ import { answered, api, lineOf } from './api.ts';
 import { openFootage } from './drop.ts';
 import { footage } from './footage.ts';
 import { program, windowProblem } from './program.ts';
-import { openSheet, saveSheetAs } from './sheetFile.ts';
+import { canBeSaved, openSheet, saveSheetAs } from './sheetFile.ts';
 
 export type Purpose = 'openFootage' | 'openSheet' | 'saveSheet';
 
@@ -15,6 +15,7 @@ export const browseProblem = signal<string | null>(null);
 
 /** Asks for a file by the system's own dialog where the host has them, else in the window's file browser. */
 export async function askForFile(purpose: Purpose, suggestedName = 'sheet.json'): Promise<void> {
+  if (purpose === 'saveSheet' && !canBeSaved()) return;
   browseProblem.value = null;
   if (!program.value?.dialogs) {
     browsing.value = { purpose };

@@ -3,28 +3,33 @@ import { answered, api, lineOf } from './api.ts';
 import { type Draft, draft, replaceDraft, sheetFolder } from './draft.ts';
 import { type Footage, footage, footageProblem, loadDropped, loadFootage, showFootage } from './footage.ts';
 import { frameNumber, goToFrame } from './frames.ts';
+import { sheetIsUnsaved } from './keptSheet.ts';
 import { selectedId } from './marks.ts';
 import { playing } from './playing.ts';
-import { isUnsaved, reduceProblem, reduction } from './reduction.ts';
+import { isUnsaved, job, leaveReduction } from './reduction.ts';
 
-/** Set while the user is asked whether a result that is not in the log may go. */
-export const leaving = signal<{ readonly goOn: () => void } | null>(null);
+/** What going on may cost: the result (or the reduction that runs), and where another sheet comes also the sheet. */
+type Losing = 'result' | 'resultAndSheet';
+
+/** Set while the user is asked whether what is not saved may go. */
+export const leaving = signal<{ readonly goOn: () => void; readonly losing: Losing } | null>(null);
 /** The sheet as it was when the footage changed under it: parts that are still the same since then are not confirmed for this drop. */
 export const carriedOver = signal<Draft | null>(null);
 
-/** Runs at once, or when the user has decided about the result that would be lost. */
-export function afterLeaving(goOn: () => void): void {
-  if (isUnsaved.value) leaving.value = { goOn };
+/** Runs at once, or when the user has decided about what would be lost. */
+export function afterLeaving(losing: Losing, goOn: () => void): void {
+  const sheetIsLost = losing === 'resultAndSheet' && sheetIsUnsaved.value;
+  if (isUnsaved.value || job.value || sheetIsLost) leaving.value = { goOn, losing };
   else goOn();
 }
 
 /** Opens footage as the next drop: the sheet stays, its marks are to be looked at again. */
 export function openFootage(path: string): void {
-  afterLeaving(async () => takeAsNextDrop(await loadFootage(path)));
+  afterLeaving('result', async () => takeAsNextDrop(await loadFootage(path)));
 }
 
 export function openDropped(file: File): void {
-  afterLeaving(async () => takeAsNextDrop(await loadDropped(file)));
+  afterLeaving('result', async () => takeAsNextDrop(await loadDropped(file)));
 }
 
 function takeAsNextDrop(next: Footage | null): void {
@@ -40,8 +45,7 @@ function takeAsNextDrop(next: Footage | null): void {
     })),
   });
   if (hadFootage) carriedOver.value = draft.value;
-  reduction.value = null;
-  reduceProblem.value = null;
+  leaveReduction();
   show(next);
 }
 
@@ -60,7 +64,7 @@ export function show(next: Footage | null): void {
 export function openNextInFolder(): void {
   const path = footage.value?.path;
   if (!path) return;
-  afterLeaving(async () => {
+  afterLeaving('result', async () => {
     try {
       const folder = path.slice(0, Math.max(path.lastIndexOf('/'), path.lastIndexOf('\\')) + 1);
       const { files } = await answered(api.files.$get({ query: { folder } }));

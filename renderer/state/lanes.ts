@@ -1,4 +1,4 @@
-import { computed, signal } from '@preact/signals';
+import { computed, effect, signal } from '@preact/signals';
 import type { Motion, Theory } from '../../analysis/sheet/result.ts';
 import { frameNumber, goToFrame } from './frames.ts';
 import { letterOfBody } from './marks.ts';
@@ -108,6 +108,16 @@ const wholeTime = computed(() => {
   const frames = reduction.value?.result.frames ?? [];
   const first = frames[0]?.timeS ?? 0;
   return { fromS: first, toS: frames.at(-1)?.timeS ?? first + 1 };
+});
+
+/** A stretch of another drop's time, or by another clock, means nothing here. */
+let zoomedIn = '';
+effect(() => {
+  if (!reduction.value) return;
+  const { fromS, toS } = wholeTime.value;
+  const of = `${reduction.value.result.inputs.footageSha256} ${fromS} ${toS}`;
+  if (of !== zoomedIn) zoomedTo.value = null;
+  zoomedIn = of;
 });
 
 export const shownTime = computed(() => zoomedTo.value ?? wholeTime.value);

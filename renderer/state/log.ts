@@ -5,8 +5,9 @@ import { replaceDraft, sheetFolder, sheetPath } from './draft.ts';
 import { draftOf } from './draftSheet.ts';
 import { afterLeaving, carriedOver, show } from './drop.ts';
 import { footageGone, footageProblem, loadFootage } from './footage.ts';
+import { keepSheet } from './keptSheet.ts';
 import { panel } from './panel.ts';
-import { reduceProblem, reduction } from './reduction.ts';
+import { isUnsaved, leaveReduction, reduction } from './reduction.ts';
 
 export const saved = signal<readonly ReductionSummary[] | null>(null);
 export const logProblem = signal<string | null>(null);
@@ -22,6 +23,11 @@ export async function readLog(): Promise<void> {
   } catch (error) {
     logProblem.value = lineOf(error);
   }
+}
+
+/** By key: nothing happens where there is nothing to save. */
+export async function saveUnsaved(): Promise<void> {
+  if (isUnsaved.value) await saveToLog();
 }
 
 /** @returns true when the reduction is in the log */
@@ -45,16 +51,16 @@ export async function saveToLog(): Promise<boolean> {
 
 /** Brings a saved reduction back: its sheet, result and, where it is still the same file, its footage. */
 export function openFromLog(id: number): void {
-  afterLeaving(async () => {
+  afterLeaving('resultAndSheet', async () => {
     try {
       const row = await answered(api.log.reductions[':id'].$get({ param: { id: String(id) } }));
       const draft = { ...draftOf(row.sheet), footage: { ...row.sheet.footage, path: row.footagePath } };
       replaceDraft(draft);
+      keepSheet();
       sheetFolder.value = null;
       sheetPath.value = null;
       carriedOver.value = null;
-      reduceProblem.value = null;
-      reduction.value = { result: row.result, draft, jobId: null, savedId: row.id };
+      leaveReduction({ result: row.result, draft, jobId: null, savedId: row.id });
       panel.value = 'result';
       show(null);
       await showFootageOf(row);

@@ -85,9 +85,9 @@ export const selectedMark = computed(() => marks.value.find((m) => m.id === sele
 /** Where the pointer is in the picture while there is something to place. */
 export const pointerAt = signal<Point | null>(null);
 
-/** T for the tip, B for the ball: the capital that tells bodies apart in picture and lanes. */
+/** T for the tip, B for the ball, O1 for other1: what tells bodies apart in picture and lanes. */
 export function letterOfBody(id: string): string {
-  return (id[0] ?? '?').toUpperCase();
+  return (id[0] ?? '?').toUpperCase() + (/\d+$/.exec(id.slice(1))?.[0] ?? '');
 }
 
 /** Selects a mark; a body's frame is shown, for that is where it belongs. */

@@ -63,12 +63,20 @@ export async function reduceDraft(): Promise<void> {
     job.value = { ...job.value, id: jobId };
     if (job.value.cancelling) await askToCancel(jobId);
     const result = await resultOf(jobId);
-    if (result) reduction.value = { result, draft: reduced, jobId, savedId: null };
+    // A result that comes although it was cancelled may belong to a drop that the window no longer shows.
+    if (result && !job.value.cancelling) reduction.value = { result, draft: reduced, jobId, savedId: null };
   } catch (error) {
     reduceProblem.value = lineOf(error);
   } finally {
     job.value = null;
   }
+}
+
+/** Another drop takes the window, with its own reduction or none: one that still runs belongs to the drop before and is cancelled. */
+export function leaveReduction(next: Reduction | null = null): void {
+  void cancelReduce();
+  reduction.value = next;
+  reduceProblem.value = null;
 }
 
 export async function cancelReduce(): Promise<void> {

@@ -66,6 +66,20 @@ describe('in the window', () => {
     expect(await said.count()).toBe(0);
   });
 
+  it('a sheet that is in no file is not left without asking', async () => {
+    const { page } = window;
+    const rate = page.locator('[id="field-clock.captureRateHz"]');
+    await page.getByRole('button', { name: 'New sheet' }).click();
+    const dialog = page.getByRole('dialog', { name: 'Not saved' });
+    await dialog.getByText('What was changed in the sheet is in no file').waitFor();
+    expect(await graveFaults(page, 'dialog[open]')).toEqual([]);
+    await dialog.getByRole('button', { name: 'Stay' }).click();
+    expect(await rate.inputValue()).toBe('1000');
+    await page.getByRole('button', { name: 'New sheet' }).click();
+    await dialog.getByRole('button', { name: 'Go on without saving' }).click();
+    expect(await rate.inputValue()).toBe('');
+  });
+
   it('a cancelled reduction leaves the window as it was', async () => {
     const { page } = window;
     await openSheetByPath(page, made.sheetPath);
@@ -78,11 +92,52 @@ describe('in the window', () => {
     await page.getByRole('button', { name: 'Reduce' }).and(page.locator(':enabled')).waitFor();
   });
 
+  it('a mark is brought into view when it is selected, and stays there when the zoom changes', async () => {
+    const { page } = window;
+    const inView = async (name: string) => {
+      const view = await page.locator('#stage-view').boundingBox();
+      const at = await mark(page, name).boundingBox();
+      if (!view || !at) return false;
+      const [x, y] = [at.x + at.width / 2 - view.x, at.y + at.height / 2 - view.y];
+      return x > 0 && x < view.width && y > 0 && y < view.height;
+    };
+    await page.getByRole('button', { name: '4×' }).click();
+    for (const name of ['Scale bar end A', 'Scale bar end B'] as const) {
+      await page.getByRole('form', { name: 'Sheet' }).getByRole('button', { name }).click();
+      await expect.poll(() => inView(name)).toBe(true);
+    }
+    expect(await inView('Scale bar end A')).toBe(false); // else neither would have had to be brought
+    await page.getByRole('button', { name: '2×' }).click();
+    await expect.poll(() => inView('Scale bar end B')).toBe(true);
+    await page.getByRole('button', { name: '4×' }).click();
+    await expect.poll(() => inView('Scale bar end B')).toBe(true);
+    await page.keyboard.press('Control+ArrowUp');
+    await page.keyboard.press('Control+ArrowUp');
+    await page.keyboard.press('Control+ArrowUp');
+    await page.keyboard.press('Control+ArrowUp');
+    await expect.poll(() => inView('Scale bar end B')).toBe(false);
+    await page.keyboard.press('Escape');
+    await page.getByRole('button', { name: 'Fit' }).click();
+  });
+
+  it('a reduction that still runs is not taken over to another drop', async () => {
+    const { page } = window;
+    await page.keyboard.press('Control+Enter');
+    await page.getByText(/\d+ of \d+ frames/).waitFor();
+    await page.getByRole('button', { name: 'Next drop' }).click();
+    const dialog = page.getByRole('dialog', { name: 'Not saved' });
+    await dialog.getByText('A reduction is running; it is cancelled when you go on.').waitFor();
+    await dialog.getByRole('button', { name: 'Go on without saving' }).click();
+    await page.locator('.stage-name').getByText('drop2.mkv').waitFor();
+    await page.getByRole('progressbar', { name: 'Reduction' }).waitFor({ state: 'detached' });
+    expect(await page.locator('.lanes').count()).toBe(0);
+    expect(await page.getByRole('button', { name: 'Save to log' }).isEnabled()).toBe(false);
+  });
+
   it('the next drop keeps the sheet; its marks are stale until they are set again or said to be right', async () => {
     const { page } = window;
     const stateOf = (part: string) =>
       page.getByRole('region', { name: part }).locator('.part-state').textContent();
-    await page.getByRole('button', { name: 'Next drop' }).click();
     await page.locator('.stage-name').getByText('drop2.mkv').waitFor();
     await shownFrame(page, 0);
     expect(await page.locator('[id="field-clock.captureRateHz"]').inputValue()).toBe('1000');
@@ -100,6 +155,14 @@ describe('in the window', () => {
     const { page, folder } = window;
     const path = join(folder, 'drops', 'kept.json');
     await fill(page, 'tether.lengthM', '455.5 mm');
+    await fill(page, 'tether.uLengthM', '0,5 mm'); // left out of the file it would be gone without a word
+    await page.keyboard.press('Control+s');
+    await page
+      .getByRole('alert')
+      .getByText(/^tether\.uLengthM: "0,5 mm" has a comma.* put it right, then save the sheet$/)
+      .waitFor();
+    expect(await page.locator('dialog[open]').count()).toBe(0);
+    await fill(page, 'tether.uLengthM', '0.5 mm');
     await page.keyboard.press('Control+s');
     await page.getByLabel('File name or whole path').fill(path);
     await page.keyboard.press('Enter');
