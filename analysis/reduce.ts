@@ -100,9 +100,21 @@ function worldTrack(
 ): WorldTrack {
   const body = sheet.bodies.find((b) => b.id === track.bodyId);
   if (!body) throw new Error(`reduce: a track of "${track.bodyId}", which the sheet does not have`);
-  const used = Array.from(track.frame.keys()).filter((i) => isData(track.state[i]));
+  const camera = (i: number) => ({
+    xPx: track.camera?.xPx[i] ?? 0,
+    yPx: track.camera?.yPx[i] ?? 0,
+    uPx: track.camera?.uPx[i] ?? 0,
+  });
+  // A frame in which the camera's own shift is not known says nothing of where the body is on the rig.
+  const used = Array.from(track.frame.keys()).filter(
+    (i) => isData(track.state[i]) && !Number.isNaN(camera(i).xPx),
+  );
   const points = used.map((i) =>
-    calibration.toWorld({ space: 'pixel', xPx: track.xPx[i], yPx: track.yPx[i] }),
+    calibration.toWorld({
+      space: 'pixel',
+      xPx: track.xPx[i] - camera(i).xPx,
+      yPx: track.yPx[i] - camera(i).yPx,
+    }),
   );
   return {
     bodyId: body.id,
@@ -111,8 +123,8 @@ function worldTrack(
     timeS: Float64Array.from(used, (i) => rowTime(timeS[track.frame[i]], track.yPx[i], rowTimeS)),
     xM: Float64Array.from(points, (p) => p.xM),
     yM: Float64Array.from(points, (p) => p.yM),
-    uXM: Float64Array.from(used, (i) => track.uXPx[i] * calibration.metrePerPx),
-    uYM: Float64Array.from(used, (i) => track.uYPx[i] * calibration.metrePerPx),
+    uXM: Float64Array.from(used, (i) => Math.hypot(track.uXPx[i], camera(i).uPx) * calibration.metrePerPx),
+    uYM: Float64Array.from(used, (i) => Math.hypot(track.uYPx[i], camera(i).uPx) * calibration.metrePerPx),
   };
 }
 

@@ -18,12 +18,20 @@ const leastPoints = 60;
  * offset stays unseen.
  */
 export function calibrateUncertainty(track: Track): Track {
-  const data = Array.from(track.frame.keys()).filter((i) => track.state[i] === 'measured');
+  const data = Array.from(track.frame.keys()).filter(
+    (i) => track.state[i] === 'measured' && !Number.isNaN(track.camera?.xPx[i] ?? 0),
+  );
   const widen = (positions: Float64Array, u: Float64Array): Float64Array => {
     const factor = Math.max(1, ...scales.map((scale) => scatterOver(data, track.frame, positions, u, scale)));
     return u.map((v, i) => (track.state[i] === 'measured' ? factor * v : v));
   };
-  return { ...track, uXPx: widen(track.xPx, track.uXPx), uYPx: widen(track.yPx, track.uYPx) };
+  const onRig = (positions: Float64Array, shift: Float64Array | undefined) =>
+    shift ? positions.map((v, i) => v - shift[i]) : positions;
+  return {
+    ...track,
+    uXPx: widen(onRig(track.xPx, track.camera?.xPx), track.uXPx),
+    uYPx: widen(onRig(track.yPx, track.camera?.yPx), track.uYPx),
+  };
 }
 
 /** Robust standard deviation of the standardised residuals; 1 where there are too few points. */

@@ -14,7 +14,7 @@ interface Cutting {
 /** Parts of the first frames, kept so that they can be matched again when more is known of the body. */
 export interface Cuttings {
   /** Keeps the part of frame n around (xPx, yPx), as long as there is room. */
-  keep(n: number, picture: Picture, brightness: number, xPx: number, yPx: number): void;
+  keep(n: number, picture: Picture, plate: Plate | null, brightness: number, xPx: number, yPx: number): void;
   /** The kept cuttings that belong to measured sightings, each with the sighting's index. */
   /** Takes pixels of the frame (1 in `mask`, side × side about a whole pixel) out of every kept plate. */
   disregard(centreX: number, centreY: number, side: number, mask: Uint8Array): void;
@@ -26,11 +26,11 @@ const roomBytes = 48 * 1024 * 1024;
 /** Pixels around the window: a body's place may still move by this much, and its model reaches a little further. */
 const margin = 10;
 
-export function startCuttings(half: number, plate: Plate | null): Cuttings {
+export function startCuttings(half: number): Cuttings {
   const kept = new Map<number, Cutting>();
   let usedBytes = 0;
   return {
-    keep(n, picture, brightness, xPx, yPx) {
+    keep(n, picture, plate, brightness, xPx, yPx) {
       if (usedBytes > roomBytes) return;
       const left = Math.max(0, Math.round(xPx) - half - margin);
       const top = Math.max(0, Math.round(yPx) - half - margin);

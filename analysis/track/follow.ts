@@ -38,7 +38,8 @@ export interface Sighting {
 
 export interface Follower {
   /** Frames must come one after the other, from the frame in which the body was placed; backwards is as good as forwards. */
-  push(n: number, picture: Picture): void;
+  /** … each with the plate as the camera sees it in that frame, where it is not the one of the surroundings. */
+  push(n: number, picture: Picture, plateNow?: Plate): void;
   /** Everything that was seen, in the order of the frames pushed: the best that is known after the last frame. */
   finish(): Sighting[];
 }
@@ -122,17 +123,17 @@ export function startFollower(
     score: m ? m.score : Number.NaN,
   });
   const sightings: Sighting[] = [];
-  const cuttings = startCuttings(half, usedPlate);
+  const cuttings = startCuttings(half);
 
   /** The best acceptable match near where the body is expected. */
-  const look = (picture: Picture, n: number, brightness: number): Match | null => {
+  const look = (picture: Picture, n: number, behind: Plate | null, brightness: number): Match | null => {
     const gap = Math.abs(n - frames[frames.length - 1]);
     const last = gap === 1 ? -nextFrom : -acrossGapFrom;
     const px = predict(frames.slice(last), xs.slice(last), n);
     const py = predict(frames.slice(last), ys.slice(last), n);
     const speedPx = Math.hypot(px.rate, py.rate);
     const blurred = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
-    const near = matcher.match(picture, blurred, px.value, py.value, noise, usedPlate, brightness);
+    const near = matcher.match(picture, blurred, px.value, py.value, noise, behind, brightness);
     const offPx = near ? Math.hypot(near.xPx - px.value, near.yPx - py.value) : Number.POSITIVE_INFINITY;
     const sure = near?.converged && gap === 1 && near.score > usualScore - doubtfulFall && offPx < doubtfulPx;
     if (near && sure) return near;
@@ -143,9 +144,7 @@ export function startFollower(
     // A body can change its speed by as much as it has (a tether that comes straight), or by a few pixels from rest.
     const radiusPx = Math.min(6 + 1.5 * speedPx + 3 * gap, 150);
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
-    const wide = seen
-      ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, usedPlate, brightness)
-      : null;
+    const wide = seen ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, behind, brightness) : null;
     const acceptable = [near, wide].filter(
       (m): m is Match =>
         m?.converged === true &&
@@ -161,15 +160,15 @@ export function startFollower(
   };
 
   /** A score that has sunk, with the blur in the model, and a residual that a turn of the body would leave. */
-  const turns = (picture: Picture, found: Match, brightness: number): boolean => {
+  const turns = (picture: Picture, found: Match, behind: Plate | null, brightness: number): boolean => {
     bestScore = Math.max(bestScore, usualScore);
-    if (!usedPlate || usualScore > bestScore - turningFall) return false;
-    return gauge.likeness(picture, model, found, usedPlate, brightness) > turnLikeness;
+    if (!behind || usualScore > bestScore - turningFall) return false;
+    return gauge.likeness(picture, model, found, behind, brightness) > turnLikeness;
   };
 
   /** Where the body is in the next frame. */
-  const follow = (n: number, picture: Picture): Sighting => {
-    const brightness = usedPlate ? brightnessOf(picture, usedPlate) : 1;
+  const follow = (n: number, picture: Picture, behind: Plate | null): Sighting => {
+    const brightness = behind ? brightnessOf(picture, behind) : 1;
     const mark = body.marks.find((m) => m.frame === n);
     if (mark) {
       // The track is split here: what was seen before says nothing about what comes after but the speed.
@@ -194,29 +193,29 @@ export function startFollower(
     if (lost) return sighting(n, 'lost', null);
     const found =
       frames.length === 0
-        ? matcher.match(picture, model, centreX, centreY, noise, usedPlate, brightness)
-        : look(picture, n, brightness);
+        ? matcher.match(picture, model, centreX, centreY, noise, behind, brightness)
+        : look(picture, n, behind, brightness);
     if (!found) {
       lost = frames.length === 0 || Math.abs(n - frames[frames.length - 1]) > longestGap;
       return sighting(n, 'lost', null);
     }
     remember(n, found.xPx, found.yPx);
     usualScore += 0.1 * (Math.min(found.score, 1) - usualScore);
-    cuttings.keep(n, picture, brightness, found.xPx, found.yPx);
+    cuttings.keep(n, picture, behind, brightness, found.xPx, found.yPx);
     const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
-    turning ||= sightings.length > still.frames && turns(picture, found, brightness);
-    if (learner && usedPlate && turning) {
-      if (found.score > leastScore) learner.refresh(picture, usedPlate, brightness, found.xPx, found.yPx);
+    turning ||= sightings.length > still.frames && turns(picture, found, behind, brightness);
+    if (learner && behind && turning) {
+      if (found.score > leastScore) learner.refresh(picture, behind, brightness, found.xPx, found.yPx);
       model = learner.model();
-    } else if (learner?.learn(picture, usedPlate, brightness, found.xPx, found.yPx, blurPx))
+    } else if (learner?.learn(picture, behind, brightness, found.xPx, found.yPx, blurPx))
       model = learner.model();
     if (!turning) steady = sightings.length + 1;
     return sighting(n, 'measured', found);
   };
 
   return {
-    push(n, picture) {
-      sightings.push(follow(n, picture));
+    push(n, picture, plateNow) {
+      sightings.push(follow(n, picture, usedPlate && (plateNow ?? usedPlate)));
     },
     finish() {
       // The first frames were matched with what was known of the body then: match the kept ones again with what is known now,

@@ -21,6 +21,11 @@ export interface Track {
   /** Zero-normalised cross-correlation of patch and frame, -1 to 1; NaN where lost or manual. */
   readonly score: Float64Array;
   readonly state: readonly BodyState[];
+  /**
+   * How far the camera had moved in each frame [px], to be taken off before a place is one on the rig; NaN where that was not
+   * found. Absent: the camera stood still.
+   */
+  readonly camera?: { readonly xPx: Float64Array; readonly yPx: Float64Array; readonly uPx: Float64Array };
 }
 
 /**

@@ -3,11 +3,14 @@ import type { Finding } from '../../analysis/sheet/result.ts';
 import type { Sheet, SheetBody } from '../../analysis/sheet/sheet.ts';
 import { bridgeGaps } from '../../analysis/track/bridge.ts';
 import { calibrateUncertainty } from '../../analysis/track/calibrateUncertainty.ts';
+import { type Camera, judgeCamera, registered, shakenPlate } from '../../analysis/track/camera.ts';
+import type { CameraShift } from '../../analysis/track/cameraShift.ts';
 import { doubledFrames, withoutFrames } from '../../analysis/track/doubledFrames.ts';
 import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
-import { plateOf } from '../../analysis/track/plate.ts';
+import type { Plate } from '../../analysis/track/match.ts';
+import { plateOf, type RestPlace } from '../../analysis/track/plate.ts';
 import { type Rest, startRest } from '../../analysis/track/rest.ts';
-import { startSampling } from '../../analysis/track/sampling.ts';
+import { type SampledFrame, startSampling } from '../../analysis/track/sampling.ts';
 import type { Picture, Track, WideSearch } from '../../analysis/track/track.ts';
 import { trackOf } from '../../analysis/track/trackOf.ts';
 import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
@@ -85,7 +88,20 @@ export async function followBodies(
   const places = runs.flatMap(({ placed, first }) =>
     first ? [{ xPx: placed.xPx, yPx: placed.yPx, radiusPx: placed.patchPx, picture: first }] : [],
   );
-  const plate = plateOf(sampling.frames, places);
+  const camera = judgeCamera(sampling.frames, places);
+  const plate = plateFor(camera, sampling.frames, places);
+  const shaken =
+    camera.kind === 'shaken' && plate ? { gauge: camera.gauge, plate: shakenPlate(plate) } : null;
+  const shifts = new Map<number, CameraShift | null>();
+  let lastShift = { xPx: 0, yPx: 0 };
+  /** The plate as the camera sees it in a frame; its shift is kept. */
+  const plateIn = (n: number, picture: Picture): Plate | undefined => {
+    if (!shaken) return undefined;
+    const shift = shaken.gauge(picture, lastShift);
+    shifts.set(n, shift);
+    if (shift) lastShift = shift;
+    return shaken.plate.plateAt(shift ?? { ...lastShift, uPx: 0 });
+  };
   const exposureShare = exposureShareOf(sheet, index);
   for (const run of runs) {
     if (!run.first || !run.rest) throw new Error(`followBodies: frame ${run.placed.frame} never came`);
@@ -101,7 +117,8 @@ export async function followBodies(
   const trackPace = startPace('track', report);
   const frames = lastFrame - firstFrame + 1;
   for await (const { n, picture } of source.frames(firstFrame, lastFrame, signal)) {
-    for (const run of runs) if (n >= run.placed.frame) run.follower?.push(n, picture);
+    const plateNow = plateIn(n, picture);
+    for (const run of runs) if (n >= run.placed.frame) run.follower?.push(n, picture, plateNow);
     trackPace.frameDone(n - firstFrame + 1, frames);
   }
   for (const run of runs) {
@@ -114,7 +131,10 @@ export async function followBodies(
         search,
         exposureShare,
       });
-      for (let n = run.placed.frame; n >= firstFrame; n--) back.push(n, await source.frame(n, signal));
+      for (let n = run.placed.frame; n >= firstFrame; n--) {
+        const picture = await source.frame(n, signal);
+        back.push(n, picture, plateIn(n, picture));
+      }
       run.sightings.unshift(...back.finish().slice(1).reverse());
     }
   }
@@ -124,15 +144,28 @@ export async function followBodies(
   );
   const tracks = runs.map((run) => {
     const seen = withoutFrames(run.sightings, doubled);
-    return calibrateUncertainty(trackOf(run.placed.id, bridgeGaps(seen)));
+    return calibrateUncertainty(trackOf(run.placed.id, bridgeGaps(seen), shifts));
   });
   return {
     index,
     firstFrame,
     lastFrame,
     tracks,
-    findings: [...saturationFindings(runs), ...doubledFindings(doubled)],
+    findings: [
+      ...(camera.finding ? [camera.finding] : []),
+      ...saturationFindings(runs),
+      ...doubledFindings(doubled),
+    ],
   };
+}
+
+function plateFor(
+  camera: Camera,
+  frames: readonly SampledFrame[],
+  places: readonly RestPlace[],
+): Plate | null {
+  if (camera.kind === 'moving') return null;
+  return plateOf(camera.kind === 'shaken' ? registered(frames, camera.shifts) : frames, places);
 }
 
 /** First pass: the frame in which the body was placed, and those after it for as long as it rests. */

@@ -44,13 +44,8 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
   const source = await tools.openFootage(resolve(folder, sheet.footage.path));
   try {
     const report = tools.onProgress ?? (() => {});
-    const { index, firstFrame, lastFrame, tracks } = await followBodies(
-      source,
-      sheet,
-      await tools.loadSearch(),
-      tools.signal,
-      report,
-    );
+    const followed = await followBodies(source, sheet, await tools.loadSearch(), tools.signal, report);
+    const { index, firstFrame, lastFrame, tracks } = followed;
     report({
       phase: 'motion',
       framesDone: index.frameCount,
@@ -70,7 +65,7 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
       },
       timeS: times.timeS,
       tracks,
-      findings: [...(order.findings ?? []), ...index.findings, ...times.findings],
+      findings: [...(order.findings ?? []), ...index.findings, ...followed.findings, ...times.findings],
     });
     refuseIfLost(result);
     return result;
