@@ -1,5 +1,5 @@
-import { mkdir, readdir, rename, rm } from 'node:fs/promises';
-import { basename, join } from 'node:path';
+import { mkdir, readdir, rename, rm, rmdir } from 'node:fs/promises';
+import { basename, dirname, join } from 'node:path';
 import type { Command } from 'commander';
 import { dataFolder } from '../dataFolder.ts';
 import { Refusal } from '../refusal.ts';
@@ -57,11 +57,13 @@ async function demo(options: DemoOptions): Promise<void> {
  */
 async function makeDemoIn(folder: string, signal: AbortSignal): Promise<string> {
   await refuseForeign(folder);
-  await mkdir(folder, { recursive: true });
   const part = join(folder, `.${process.pid}.part`);
+  const firstNew = await makeFolders(folder, part);
+  let whole = false;
   try {
     // loaded here: no other command needs the maker of footage
     const { makeDemo } = await import('../../fixtures/demo.ts');
+    signal.throwIfAborted(); // loading takes long enough for a Ctrl-C
     const { title, footagePath, sheetPath } = await Promise.race([makeDemo(part), rejectedBy(signal)]);
     if (basename(sheetPath) !== sheetName)
       throw new Error(`demo: its sheet is called ${basename(sheetPath)}`);
@@ -69,9 +71,43 @@ async function makeDemoIn(folder: string, signal: AbortSignal): Promise<string> 
     await rm(join(folder, resultName), { force: true }); // of an earlier demo
     if (!(await readdir(folder)).includes(basename(footagePath)))
       throw new Error('demo: its footage is missing');
+    whole = true;
     return title;
   } finally {
     await rm(part, { recursive: true, force: true, maxRetries: 3 });
+    if (firstNew !== undefined && !whole) await removeEmpty(folder, firstNew);
+  }
+}
+
+/** Removes empty folders from `folder` up to `last`; one in which someone put something meanwhile stays. */
+async function removeEmpty(folder: string, last: string): Promise<void> {
+  try {
+    await rmdir(folder);
+  } catch {
+    return; // not empty: rmdir removes nothing else
+  }
+  if (folder !== last && folder.startsWith(last)) await removeEmpty(dirname(folder), last);
+}
+
+/**
+ * Makes the demo's folder, if it is missing, and the one for its unfinished files.
+ *
+ * @returns the first of the folders that had to be made for the demo's, undefined when it was there
+ * @throws Refusal (status 2) when nothing can be written there
+ */
+async function makeFolders(folder: string, part: string): Promise<string | undefined> {
+  try {
+    const firstNew = await mkdir(folder, { recursive: true });
+    await mkdir(part, { recursive: true });
+    return firstNew;
+  } catch (error) {
+    const why = error instanceof Error ? error.message : String(error);
+    throw new Refusal(
+      'folderWrong',
+      2,
+      `--folder ${folder}: nothing can be written there (${why}); give another folder.`,
+      { cause: error },
+    );
   }
 }
 

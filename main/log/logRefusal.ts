@@ -13,6 +13,7 @@ const reasons: Readonly<Record<string, string>> = {
   EACCES: 'its folder cannot be written to; check its permissions or give another file',
   EPERM: 'its folder cannot be written to; check its permissions or give another file',
   EROFS: 'its folder is on a read-only drive; give a file on another one',
+  ENOENT: 'its folder cannot be made; check that the drive and the folders before it exist',
   ENOTDIR: 'a part of its path is a file, not a folder; check the path',
   EEXIST: 'a part of its path is a file, not a folder; check the path',
   ENOSPC: 'the disk is full; make room and try again',

@@ -13,7 +13,7 @@ export interface CommandRun {
 interface RunOptions {
   readonly cwd?: string;
   readonly env?: NodeJS.ProcessEnv;
-  /** Called once, when something has come on standard output. */
+  /** Called once, when something has come on standard output or standard error. */
   readonly onFirstOutput?: (child: ChildProcess) => void;
 }
 
@@ -27,10 +27,11 @@ export function tetherfall(args: readonly string[], options: RunOptions = {}): P
   let stdout = '';
   let stderr = '';
   child.stdout.setEncoding('utf8').on('data', (text: string) => {
-    if (stdout === '') options.onFirstOutput?.(child);
+    if (stdout + stderr === '') options.onFirstOutput?.(child);
     stdout += text;
   });
   child.stderr.setEncoding('utf8').on('data', (text: string) => {
+    if (stdout + stderr === '') options.onFirstOutput?.(child);
     stderr += text;
   });
   return new Promise((resolve, reject) => {

@@ -1,4 +1,4 @@
-import { mkdir, readFile, writeFile } from 'node:fs/promises';
+import { mkdir, readFile, rm, symlink, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { type Result, resultSchema } from '../../analysis/sheet/result.ts';
@@ -216,4 +216,27 @@ describe('tetherfall demo', () => {
     });
     expect(await folder.files()).toEqual(before);
   });
+
+  it('says that its folder cannot be made', async () => {
+    const link = folder.path('loose');
+    await symlink(folder.path('nowhere/at/all'), link, 'junction'); // stops even an administrator
+    const run = await tetherfallHere(['demo', '--folder', link, '--quiet']);
+    await rm(link);
+    expect(run).toMatchObject({ status: 2, stdout: '' });
+    expect(run.stderr).toMatch(/^tetherfall: --folder [^\n]+loose: nothing can be written there [^\n]+\n$/);
+  });
+
+  it.skipIf(process.platform === 'win32')(
+    'leaves nothing behind when stopped at its very start',
+    async () => {
+      const before = await folder.files();
+      const run = await tetherfall(['demo', '--folder', folder.path('new/demo')], {
+        env: { TETHERFALL_LOG: folder.path('demo.sqlite') },
+        onFirstOutput: (child) => child.kill('SIGINT'), // the maker of footage is not even loaded
+      });
+      expect(run.status).toBe(130);
+      expect(lines(run.stderr).at(-1)).toBe('tetherfall: Stopped before it was done; there is no result.');
+      expect(await folder.files()).toEqual(before);
+    },
+  );
 });

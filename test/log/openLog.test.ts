@@ -1,4 +1,4 @@
-import { readFile, writeFile } from 'node:fs/promises';
+import { readFile, symlink, writeFile } from 'node:fs/promises';
 import { dirname, join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { openConnection } from '../../main/log/connection.ts';
@@ -122,6 +122,12 @@ describe('a log that cannot be opened', () => {
     await writeFile(file, 'x');
     expect(await refused(join(file, 'log.sqlite'))).toContain('is a file, not a folder');
     expect(await refused(join(file, 'below', 'log.sqlite'))).toContain('is a file, not a folder');
+  });
+
+  it('is in a folder that cannot be made', async () => {
+    const link = await folder.path('loose');
+    await symlink(join(dirname(link), 'nowhere', 'at', 'all'), link, 'junction'); // stops even an administrator
+    expect(await refused(join(link, 'log.sqlite'))).toContain('check');
   });
 
   it('is a folder', async () => {
