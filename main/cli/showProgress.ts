@@ -29,8 +29,8 @@ export function progressBar(output: ProgressOutput): ProgressShow {
   return {
     show(progress) {
       drawn = true;
-      // one column stays free: a full line would wrap on some terminals
-      output.write(eraseLine + progressBarText(progress, (output.columns ?? 80) - 1));
+      // one column stays free: a full line would wrap on some terminals; one that does not know its width says 0
+      output.write(eraseLine + progressBarText(progress, (output.columns || 80) - 1));
     },
     end() {
       if (drawn) output.write(eraseLine);

@@ -39,6 +39,13 @@ describe('the progress bar', () => {
     }
   });
 
+  it.each([undefined, 0])('is drawn for 80 columns on a terminal that says its width is %s', (columns) => {
+    const terminal = output(true, columns);
+    progressBar(terminal).show(half);
+    expect(terminal.written).toEqual([`\r\u001b[K${progressBarText(half, 79)}`]);
+    expect(progressBarText(half, 79)).toMatch(/\[#+-+\] .* 3 s left$/);
+  });
+
   it('is redrawn in one line and taken away at the end', () => {
     const terminal = output(true, 90);
     const bar = progressBar(terminal);
