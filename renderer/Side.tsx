@@ -1,8 +1,10 @@
+import { useLayoutEffect, useRef } from 'preact/hooks';
 import { LogList } from './log/LogList.tsx';
 import { Cautions } from './parts/Cautions.tsx';
 import { ResultView } from './parts/ResultView.tsx';
 import { SheetForm } from './sheet/SheetForm.tsx';
 import { type Panel, panel } from './state/panel.ts';
+import { reduction } from './state/reduction.ts';
 
 const panels: readonly { readonly name: Panel; readonly title: string }[] = [
   { name: 'sheet', title: 'Sheet' },
@@ -13,6 +15,7 @@ const panels: readonly { readonly name: Panel; readonly title: string }[] = [
 
 /** Beside the picture: one of sheet, result, log. */
 export function Side() {
+  const scrolled = useOwnScroll();
   return (
     <aside class="side" aria-label="Sheet, result and log">
       <div class="side-choice" role="tablist" aria-label="Beside the picture">
@@ -37,6 +40,7 @@ export function Side() {
       <div
         class="side-panel"
         id="side-panel"
+        ref={scrolled}
         role="tabpanel"
         aria-labelledby={`choose-${panel.value}`}
         // biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls must be reachable by keyboard
@@ -49,6 +53,29 @@ export function Side() {
       </div>
     </aside>
   );
+}
+
+/** Each panel stays where it was scrolled to; a new result is seen from its top, where verdicts and key values are. */
+function useOwnScroll() {
+  const element = useRef<HTMLDivElement>(null);
+  const places = useRef<Partial<Record<Panel, number>>>({});
+  const name = panel.value;
+  const result = reduction.value?.result;
+  useLayoutEffect(() => {
+    places.current.result = 0;
+    if (panel.peek() === 'result') element.current?.scrollTo(0, 0);
+  }, [result]);
+  useLayoutEffect(() => {
+    const shown = element.current;
+    if (!shown) return;
+    shown.scrollTop = places.current[name] ?? 0;
+    const remember = () => {
+      places.current[name] = shown.scrollTop;
+    };
+    shown.addEventListener('scroll', remember);
+    return () => shown.removeEventListener('scroll', remember);
+  }, [name]);
+  return element;
 }
 
 function step(event: KeyboardEvent, from: Panel): void {

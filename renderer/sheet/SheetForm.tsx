@@ -12,8 +12,8 @@ export function SheetForm() {
   return (
     <form class="sheet" aria-label="Sheet" autocomplete="off" onSubmit={(event) => event.preventDefault()}>
       <p class="hint">
-        {sheetPath.value ?? 'Not saved in a file.'} Numbers take a unit: 450 mm, 200 µs, 10 ppm. u: standard
-        uncertainty (k = 1).
+        <span class="path sheet-path">{sheetPath.value ?? 'Not saved in a file.'}</span> Numbers take a unit:
+        450 mm, 200 µs, 10 ppm. u: standard uncertainty (k = 1).
       </p>
       <FootagePart />
       <ClockPart />

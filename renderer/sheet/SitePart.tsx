@@ -36,7 +36,7 @@ export function SitePart() {
         </div>
       )}
       <div class="measured-field three">
-        <NumberField field="ambient.temperatureC" label="Air" unit="°C" />
+        <NumberField field="ambient.temperatureC" label="Temperature" unit="°C" />
         <NumberField field="ambient.pressurePa" label="Pressure" unit="Pa" />
         <NumberField field="ambient.relativeHumidity" label="Humidity, 0 to 1" unit="1" />
       </div>

@@ -202,7 +202,9 @@ describe('a drop in the window', () => {
     await page.keyboard.press('Control+Enter');
     await page.getByRole('progressbar', { name: 'Reduction' }).waitFor();
     await page.getByText(/\d+ of \d+ frames, \d+ \/s/).waitFor();
+    await page.locator('#side-panel').evaluate((panel) => panel.scrollTo(0, 1e5)); // the sheet, not its result
     await page.locator('.key-values').waitFor({ timeout: reduceMs });
+    await expect.poll(() => page.locator('#side-panel').evaluate((panel) => panel.scrollTop)).toBe(0);
     const inked = await page.locator('.lane canvas').evaluateAll((canvases) =>
       canvases.map((canvas) => {
         const { width, height } = canvas as HTMLCanvasElement;
