@@ -13,5 +13,5 @@ export function dataFolder(
 
 /** The log's file: what was asked for, else TETHERFALL_LOG, else log.sqlite in the data folder. */
 export function logPath(asked: string | undefined, env: NodeJS.ProcessEnv = process.env): string {
-  return asked ?? env.TETHERFALL_LOG ?? join(dataFolder(env), 'log.sqlite');
+  return asked ?? (env.TETHERFALL_LOG || join(dataFolder(env), 'log.sqlite'));
 }

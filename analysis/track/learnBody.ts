@@ -42,18 +42,21 @@ export function guessCoverage(still: StillBody, behind: Float64Array): CoverageG
   const noticeable = Math.max(2, 4 * still.noise * Math.sqrt(1 / still.frames + 0.04));
   const noticed = difference.filter((d) => d > noticeable).sort();
   if (noticed.length < leastCovered) return null;
-  // Optics smear the edge: half coverage is where the difference is about half of what it is inside.
+  // Optics smear the edge: half coverage is where the difference is about half of what it is inside. But a shaded body may
+  // differ little from the board on one side: what differs noticeably counts half.
   const contrast = noticed[noticed.length >> 1];
-  const threshold = Math.max(noticeable, 0.4 * contrast);
-  const covered = filled(
-    closed(
-      Uint8Array.from(difference, (d) => (d > threshold ? 1 : 0)),
+  const above = (threshold: number) =>
+    filled(
+      closed(
+        Uint8Array.from(difference, (d) => (d > threshold ? 1 : 0)),
+        side,
+      ),
       side,
-    ),
-    side,
-  );
-  if (covered.reduce((s, v) => s + v, 0) < leastCovered) return null;
-  const hard = Float64Array.from(covered);
+    );
+  const sure = above(Math.max(noticeable, 0.4 * contrast));
+  const perhaps = above(Math.max(noticeable, 0.2 * contrast));
+  if (sure.reduce((s, v) => s + v, 0) < leastCovered) return null;
+  const hard = Float64Array.from(sure, (v, i) => 0.5 * (v + perhaps[i]));
   const rim = smoothed(hard, side, 1.5);
   return {
     coverage: smoothed(hard, side, opticsPx),

@@ -69,6 +69,8 @@ const huberAt = 2.5;
 const rejectAt = 6;
 const mostSteps = 12;
 const settledPx = 2e-4;
+/** Weights at the edge of rejection can flip for ever; steps this small no longer matter beside the noise. */
+const goodEnoughPx = 0.005;
 const leastInside = 0.6;
 /** Standard deviation of a body's gain about 1, where the pixels do not say better. */
 const gainPrior = 0.3;
@@ -92,6 +94,7 @@ export function makeMatcher(half: number): Matcher {
       let offset = 0;
       let noise = sigma;
       let converged = false;
+      let lastStepPx = Number.POSITIVE_INFINITY;
       let answer: Match | null = null;
       if (!coverage) {
         c.value.fill(1);
@@ -213,7 +216,7 @@ export function makeMatcher(half: number): Matcher {
             score: varI > 0 && varM > 0 ? cov / Math.sqrt(varI * varM) : 0,
             gain,
             inside,
-            converged,
+            converged: converged || lastStepPx < goodEnoughPx,
           };
           break;
         }
@@ -231,6 +234,7 @@ export function makeMatcher(half: number): Matcher {
         x += stepX * shorten;
         y += stepY * shorten;
         if (!Number.isFinite(x) || !Number.isFinite(y)) return null;
+        lastStepPx = length;
         converged = length < settledPx;
       }
       return answer;

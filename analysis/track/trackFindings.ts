@@ -23,7 +23,7 @@ export function trackFindings(tracks: readonly Track[], bodies: readonly SheetBo
       findings.push({
         level: 'note',
         code: 'bodyBridged',
-        text: `Body ${track.bodyId} was out of sight in ${bridged} frames; its places there are inferred and not used as data.`,
+        text: `Body ${track.bodyId} was out of sight in ${bridged === 1 ? '1 frame; its place there is' : `${bridged} frames; its places there are`} inferred and not used as data.`,
       });
     }
     if (role !== 'other' && travelPx(track) < leastTravelPx) {

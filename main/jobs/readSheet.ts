@@ -25,8 +25,12 @@ export async function readSheet(path: string): Promise<SheetFile> {
   try {
     bytes = await readFile(path);
   } catch (error) {
-    const reason =
-      (error as NodeJS.ErrnoException).code === 'ENOENT' ? 'there is no such file' : (error as Error).message;
+    const { code, message } = error as NodeJS.ErrnoException;
+    const known: Record<string, string> = {
+      ENOENT: 'there is no such file',
+      EISDIR: 'it is a folder, not a file',
+    };
+    const reason = known[code ?? ''] ?? message;
     throw new Refusal('sheetNotRead', 2, `Sheet ${path}: ${reason}; check the path.`, { cause: error });
   }
   let json: unknown;
