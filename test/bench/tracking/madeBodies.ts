@@ -102,6 +102,6 @@ export const madeBodies: readonly MadeBody[] = [
     'boxCorner 60 px, noise 3',
     'plain',
     { look: 'boxCorner', sizePx: 60, noiseSigma: 3 },
-    { movingFrames: 60, accelerationPx: 0.05 },
+    { movingFrames: 60, accelerationPx: 0.1 },
   ),
 ];

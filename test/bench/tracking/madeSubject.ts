@@ -6,7 +6,7 @@ import { spreadOver } from './spreadOver.ts';
 import type { Subject } from './subject.ts';
 
 /** An odd patch that holds the body and a little of what is around it. */
-export function patchFor(sizePx: number): number {
+function patchFor(sizePx: number): number {
   return 2 * Math.ceil(0.65 * sizePx + 1) + 1;
 }
 
