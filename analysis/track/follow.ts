@@ -61,6 +61,8 @@ const leastGain = 0.4;
 /** A score that falls by this much, or a body this far from where it was expected, asks for a wide search to be sure. */
 const doubtfulFall = 0.15;
 const doubtfulPx = 2;
+/** By so much a body further off must score better than one where it was expected. */
+const clearlyBetter = 0.2;
 
 /** What a follower is given besides the body. */
 export interface Surroundings {
@@ -145,18 +147,15 @@ export function startFollower(
     const radiusPx = Math.min(6 + 1.5 * speedPx + 3 * gap, 150);
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
     const wide = seen ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, behind, brightness) : null;
-    const acceptable = [near, wide].filter(
-      (m): m is Match =>
-        m?.converged === true &&
-        m.score > Math.max(leastScore, usualScore - 0.4) &&
-        m.gain > leastGain &&
-        m.gain < 1 / leastGain &&
-        Math.hypot(m.xPx - px.value, m.yPx - py.value) <= radiusPx + 2,
-    );
-    return acceptable.reduce<Match | null>(
-      (best, m) => (best === null || m.score > best.score ? m : best),
-      null,
-    );
+    const acceptable = (m: Match | null): m is Match =>
+      m?.converged === true &&
+      m.score > Math.max(leastScore, usualScore - 0.4) &&
+      m.gain > leastGain &&
+      m.gain < 1 / leastGain &&
+      Math.hypot(m.xPx - px.value, m.yPx - py.value) <= radiusPx + 2;
+    if (!acceptable(wide)) return acceptable(near) ? near : null;
+    // Links of a chain are alike: one further off must be clearly the better likeness.
+    return acceptable(near) && near.score > wide.score - clearlyBetter ? near : wide;
   };
 
   /** A score that has sunk, with the blur in the model, and a residual that a turn of the body would leave. */
