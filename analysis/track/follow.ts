@@ -37,8 +37,11 @@ export interface Sighting {
 }
 
 export interface Follower {
-  /** Frames must come one after the other, from the frame in which the body was placed; backwards is as good as forwards. */
-  /** … each with the plate as the camera sees it in that frame, where it is not the one of the surroundings. */
+  /**
+   * Frames must come one after the other, from the frame in which the body was placed; backwards is as good as forwards.
+   *
+   * @param plateNow  the plate as the camera sees it in this frame, where it is not that of the surroundings
+   */
   push(n: number, picture: Picture, plateNow?: Plate): void;
   /** Everything that was seen, in the order of the frames pushed: the best that is known after the last frame. */
   finish(): Sighting[];
