@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import { fieldMeantBy, stemOf } from './fieldNames.ts';
+import { motionMethods } from './motionSettings.ts';
 import type { Finding } from './result.ts';
 import { type Sheet, sheetSchema } from './sheet.ts';
 import { unknownFields } from './unknownFields.ts';
@@ -29,6 +30,9 @@ function problemText(issue: z.core.$ZodIssue, json: unknown): string {
   const value = valueAt(json, issue.path);
   if (issue.code === 'invalid_union' && issue.path.at(-1) === 'kind') {
     return `${where}: must be "captureRate", "container" or "timestamps"${value === undefined ? ', but is missing' : `, not ${JSON.stringify(value)}`}`;
+  }
+  if (issue.code === 'invalid_union' && where === 'motion.method') {
+    return `${where}: must be ${motionMethods.map((m) => `"${m}"`).join(', ')}${value === undefined ? '; it is missing' : `, not ${JSON.stringify(value)}`}`;
   }
   if (issue.code === 'invalid_union' && where === 'site') {
     return 'site: state gMps2 (greater than 0), or latitudeDeg (-90 to 90) with heightM';

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { motionSettingsSchema } from './motionSettings.ts';
 
 /**
  * What the technician states about a drop. Units are in the names (SI); `u…` is a standard uncertainty (k = 1).
@@ -113,6 +114,8 @@ export const sheetSchema = z.object({
   ambient: ambient.optional(),
   bodies: z.array(body).min(1),
   tether: tether.optional(),
+  /** How velocity and acceleration are worked out; absent: the adaptive method. */
+  motion: motionSettingsSchema.optional(),
   limits: z.array(limit).default([]),
 });
 

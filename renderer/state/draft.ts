@@ -49,6 +49,8 @@ export interface Draft {
     readonly links?: number;
     readonly tipMassKg?: number;
   };
+  /** How motion is worked out: kept as it stood in the sheet file. */
+  readonly motion?: SheetInput['motion'];
   readonly limits: readonly DraftLimit[];
 }
 

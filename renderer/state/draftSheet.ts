@@ -39,6 +39,7 @@ export function sheetJson(draft: Draft): Record<string, unknown> {
     ...part('ambient', draft.ambient),
     bodies: draft.bodies.filter(isPlaced),
     ...part('tether', draft.tether),
+    ...optional('motion', draft.motion),
     limits: draft.limits,
   };
 }
@@ -62,6 +63,7 @@ export function draftOf(sheet: Sheet): Draft {
     ambient: sheet.ambient ?? {},
     bodies: sheet.bodies,
     tether: sheet.tether ?? {},
+    ...optional('motion', sheet.motion),
     limits: sheet.limits,
   };
 }
