@@ -1,3 +1,4 @@
+import type { Box } from './normalEquations.ts';
 import { quinticCoefficients, quinticWeights, TAPS, TAPS_BEFORE } from './spline.ts';
 
 /** Pixels around the window that its spline reaches for a shift of up to half a pixel. */
@@ -36,9 +37,9 @@ export function sampledFor(half: number): Sampled {
 export interface Sampler {
   /**
    * Values and slopes of the layer moved by (dxPx, dyPx), |d| ≤ 0.5: into(u) = layer(u - d) for whole u.
-   * The slopes are with respect to u.
+   * The slopes are with respect to u. Only the pixels of the box are filled, where one is given.
    */
-  sample(layer: Layer, dxPx: number, dyPx: number, into: Sampled): void;
+  sample(layer: Layer, dxPx: number, dyPx: number, into: Sampled, box?: Box): void;
 }
 
 /** Cost per sample: 30 · (2 · half + 1)² multiplications. */
@@ -47,13 +48,15 @@ export function makeSampler(half: number): Sampler {
   const wide = side + 2 * REACH;
   const rowValue = new Float64Array(wide * side);
   const rowSlope = new Float64Array(wide * side);
+  const whole = { left: 0, top: 0, right: side - 1, bottom: side - 1 };
   const wx = new Float64Array(TAPS);
   const sx = new Float64Array(TAPS);
   const wy = new Float64Array(TAPS);
   const sy = new Float64Array(TAPS);
 
   return {
-    sample(layer, dxPx, dyPx, into) {
+    sample(layer, dxPx, dyPx, into, box = whole) {
+      const { left, top, right, bottom } = box;
       const c = layer.coefficients;
       const wholeX = Math.floor(-dxPx);
       const wholeY = Math.floor(-dyPx);
@@ -62,10 +65,11 @@ export function makeSampler(half: number): Sampler {
       const [w0, w1, w2, w3, w4, w5] = wx;
       const [s0, s1, s2, s3, s4, s5] = sx;
       const first = REACH + wholeX - TAPS_BEFORE;
-      for (let row = 0; row < wide; row++) {
-        let at = row * wide + first;
+      const firstRow = REACH + wholeY - TAPS_BEFORE;
+      for (let row = top + firstRow; row < bottom + firstRow + TAPS; row++) {
+        let at = row * wide + first + left;
         const out = row * side;
-        for (let i = 0; i < side; i++, at++) {
+        for (let i = left; i <= right; i++, at++) {
           const c0 = c[at];
           const c1 = c[at + 1];
           const c2 = c[at + 2];
@@ -78,11 +82,10 @@ export function makeSampler(half: number): Sampler {
       }
       const [v0, v1, v2, v3, v4, v5] = wy;
       const [t0, t1, t2, t3, t4, t5] = sy;
-      const firstRow = REACH + wholeY - TAPS_BEFORE;
-      for (let row = 0; row < side; row++) {
-        let a = (row + firstRow) * side;
+      for (let row = top; row <= bottom; row++) {
+        let a = (row + firstRow) * side + left;
         const out = row * side;
-        for (let i = 0; i < side; i++, a++) {
+        for (let i = left; i <= right; i++, a++) {
           const b = a + side;
           const d = b + side;
           const e = d + side;

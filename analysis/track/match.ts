@@ -1,4 +1,14 @@
 import { type Layer, makeSampler, sampledFor } from './layer.ts';
+import {
+  type Box,
+  emptyEquations,
+  type Fitting,
+  fillEquations,
+  fitGainAndOffset,
+  likeness,
+  UNKNOWNS,
+} from './normalEquations.ts';
+import { makeSymmetricSolver } from './solveSymmetric.ts';
 import type { Picture } from './track.ts';
 
 /**
@@ -67,8 +77,11 @@ export interface Matcher {
 const huberAt = 2.5;
 /** Beyond this a pixel shows something else (a tether that crosses) and counts for nothing, once the match is near. */
 const rejectAt = 6;
+const nearPx = 0.3;
 const mostSteps = 12;
+/** The next step would be shorter than this, or than this share of the place's standard uncertainty. */
 const settledPx = 2e-4;
+const settledShare = 0.05;
 /** Weights at the edge of rejection can flip for ever; steps this small no longer matter beside the noise. */
 const goodEnoughPx = 0.005;
 const leastInside = 0.6;
@@ -81,229 +94,159 @@ export function makeMatcher(half: number): Matcher {
   const sampler = makeSampler(half);
   const a = sampledFor(half);
   const c = sampledFor(half);
-  const normal = new Float64Array(16);
-  const right = new Float64Array(4);
+  const equations = emptyEquations();
+  const solver = makeSymmetricSolver(UNKNOWNS);
+  const step = new Float64Array(UNKNOWNS);
+  const pixel = new Int32Array(side * side);
+  const seen = new Float64Array(side * side);
+  const behind = new Float64Array(side * side);
+  let masked: Masked | null = null;
 
   return {
     match(picture, model, startXPx, startYPx, sigma, plate, brightness) {
-      const { widthPx, heightPx, luma } = picture;
       const { mask, appearance, coverage } = model;
+      if (masked?.mask !== mask) masked = maskedBox(mask, side);
+      const fitting: Fitting = { pixel, count: 0, seen, behind, mask, appearance: a, coverage: c, side };
+      const level = { gain: 1, offset: 0 };
       let x = startXPx;
       let y = startYPx;
-      let gain = 1;
-      let offset = 0;
+      let left = Number.NaN;
+      let top = Number.NaN;
+      let box = masked.box;
       let noise = sigma;
-      let converged = false;
-      let lastStepPx = Number.POSITIVE_INFINITY;
-      let answer: Match | null = null;
+      let lengthPx = Number.POSITIVE_INFINITY;
       if (!coverage) {
         c.value.fill(1);
         c.slopeX.fill(0);
         c.slopeY.fill(0);
       }
 
-      for (let step = 0; step <= mostSteps; step++) {
+      for (let steps = 1; steps <= mostSteps; steps++) {
         const wholeX = Math.round(x);
         const wholeY = Math.round(y);
-        sampler.sample(appearance, x - wholeX, y - wholeY, a);
-        if (coverage) sampler.sample(coverage, x - wholeX, y - wholeY, c);
-        const fromX = Math.max(0, half - wholeX);
-        const toX = Math.min(side - 1, widthPx - 1 - wholeX + half);
-        const fromY = Math.max(0, half - wholeY);
-        const toY = Math.min(side - 1, heightPx - 1 - wholeY + half);
-        if (step === 0) {
-          const start = gainAndOffset(
-            picture,
-            plate,
-            brightness,
-            mask,
-            a.value,
-            c.value,
-            side,
-            wholeX - half,
-            wholeY - half,
-            fromX,
-            toX,
-            fromY,
-            toY,
-          );
-          if (!start) return null;
-          ({ gain, offset } = start);
+        if (wholeX - half !== left || wholeY - half !== top) {
+          left = wholeX - half;
+          top = wholeY - half;
+          box = insideOf(masked.box, left, top, picture);
+          fitting.count = gather(fitting, picture, plate, brightness, box, left, top);
         }
+        const dx = x - wholeX;
+        const dy = y - wholeY;
+        sampler.sample(appearance, dx, dy, a, box);
+        if (coverage) sampler.sample(coverage, dx, dy, c, box);
+        if (steps === 1 && !fitGainAndOffset(fitting, level)) return null;
+        const rejecting = lengthPx < nearPx;
+        const robustness = { huber: huberAt * noise, reject: rejectAt * noise, rejecting };
+        fillEquations(fitting, level, robustness, null, equations);
 
-        normal.fill(0);
-        right.fill(0);
-        let sumW = 0;
-        let sumMask = 0;
-        let sumWR2 = 0;
-        let sumI = 0;
-        let sumM = 0;
-        let sumII = 0;
-        let sumMM = 0;
-        let sumIM = 0;
-        for (let row = fromY; row <= toY; row++) {
-          const pictureRow = (wholeY - half + row) * widthPx + wholeX - half;
-          for (let column = fromX; column <= toX; column++) {
-            const u = row * side + column;
-            const m = mask[u];
-            if (m === 0) continue;
-            const behind = plate ? brightness * plate.level[pictureRow + column] : 0;
-            if (Number.isNaN(behind)) continue;
-            const seen = luma[pictureRow + column];
-            const av = a.value[u];
-            const cv = c.value[u];
-            const modelled = gain * av + offset * cv + (1 - cv) * behind;
-            const r = seen - modelled;
-            const size = r < 0 ? -r : r;
-            const w =
-              size <= huberAt * noise
-                ? m
-                : step > 1 && size > rejectAt * noise
-                  ? 0
-                  : (m * huberAt * noise) / size;
-            const lift = offset - behind;
-            const jx = -(gain * a.slopeX[u] + lift * c.slopeX[u]);
-            const jy = -(gain * a.slopeY[u] + lift * c.slopeY[u]);
-            normal[0] += w * jx * jx;
-            normal[1] += w * jx * jy;
-            normal[2] += w * jx * av;
-            normal[3] += w * jx * cv;
-            normal[5] += w * jy * jy;
-            normal[6] += w * jy * av;
-            normal[7] += w * jy * cv;
-            normal[10] += w * av * av;
-            normal[11] += w * av * cv;
-            normal[15] += w * cv * cv;
-            right[0] += w * jx * r;
-            right[1] += w * jy * r;
-            right[2] += w * av * r;
-            right[3] += w * cv * r;
-            sumW += w;
-            sumMask += m;
-            sumWR2 += w * r * r;
-            sumI += m * seen;
-            sumM += m * modelled;
-            sumII += m * seen * seen;
-            sumMM += m * modelled * modelled;
-            sumIM += m * seen * modelled;
-          }
-        }
-        let whole = 0;
-        for (let u = 0; u < mask.length; u++) whole += mask[u];
-        const inside = sumMask / whole;
+        const { matrix, right, sumW, sumMask } = equations;
+        const inside = sumMask / masked.weight;
         if (inside < leastInside || sumW <= 8) return null;
-        const variance = sumWR2 / Math.max(sumW - 4, 1);
+        const variance = equations.sumWR2 / Math.max(sumW - 4, 1);
         noise = Math.max(Math.sqrt(variance), 0.2);
         if (coverage) {
           // A body of one grey cannot tell gain from offset: a weak prior on the gain keeps the equations regular.
           const prior = variance / (gainPrior * gainPrior);
-          normal[10] += prior;
-          right[2] += prior * (1 - gain);
+          matrix[12] += prior;
+          right[2] += prior * (1 - level.gain);
         }
-        const inverse = invertSymmetric4(normal);
-        if (!inverse) return null;
-        if (converged || step === mostSteps) {
-          const varI = sumII - (sumI * sumI) / sumMask;
-          const varM = sumMM - (sumM * sumM) / sumMask;
-          const cov = sumIM - (sumI * sumM) / sumMask;
-          answer = {
-            xPx: x,
-            yPx: y,
-            varXPx2: variance * inverse[0],
-            varYPx2: variance * inverse[5],
-            covXYPx2: variance * inverse[1],
-            residual: Math.sqrt(variance),
-            score: varI > 0 && varM > 0 ? cov / Math.sqrt(varI * varM) : 0,
-            gain,
-            inside,
-            converged: converged || lastStepPx < goodEnoughPx,
-          };
-          break;
-        }
-        let stepX = 0;
-        let stepY = 0;
-        for (let k = 0; k < 4; k++) {
-          stepX += inverse[k] * right[k];
-          stepY += inverse[4 + k] * right[k];
-          gain += inverse[8 + k] * right[k];
-          offset += inverse[12 + k] * right[k];
+        if (!solver.invert(matrix)) return null;
+        const { inverse } = solver;
+        let gained = 0;
+        for (let k = 0; k < UNKNOWNS; k++) {
+          let sum = 0;
+          for (let j = 0; j < UNKNOWNS; j++) sum += inverse[k * UNKNOWNS + j] * right[j];
+          step[k] = sum;
+          gained += sum * right[k];
         }
         // A step over a pixel leaves the region where the slope is the truth: shorten it, keep its direction.
-        const length = Math.hypot(stepX, stepY);
-        const shorten = length > 1 ? 1 / length : 1;
-        x += stepX * shorten;
-        y += stepY * shorten;
+        const beforePx = lengthPx;
+        lengthPx = Math.hypot(step[0], step[1]);
+        const shorten = lengthPx > 1 ? 1 / lengthPx : 1;
+        x += step[0] * shorten;
+        y += step[1] * shorten;
         if (!Number.isFinite(x) || !Number.isFinite(y)) return null;
-        lastStepPx = length;
-        converged = length < settledPx;
+        // Steps shrink by about the same factor each time: the next one would be this long.
+        const nextPx = beforePx === Number.POSITIVE_INFINITY ? lengthPx : lengthPx * (lengthPx / beforePx);
+        const enoughPx = Math.max(settledPx, settledShare * Math.sqrt(variance * inverse[0]));
+        const weightsStand = rejecting || equations.outliers === 0;
+        const converged = weightsStand && lengthPx < beforePx && nextPx < enoughPx;
+        if (converged || steps === mostSteps) {
+          const remaining = Math.max(equations.sumWR2 - gained, 0) / Math.max(sumW - 4, 1);
+          const score = likeness(fitting, level);
+          return {
+            xPx: x,
+            yPx: y,
+            varXPx2: remaining * inverse[0],
+            varYPx2: remaining * inverse[UNKNOWNS + 1],
+            covXYPx2: remaining * inverse[1],
+            residual: Math.sqrt(remaining),
+            score,
+            gain: level.gain + step[2],
+            inside,
+            converged: converged || lengthPx < goodEnoughPx,
+          };
+        }
+        level.gain += step[2];
+        level.offset += step[3];
       }
-      return answer;
+      return null;
     },
   };
 }
 
-/** Least squares of frame ≈ g·A + o·α + (1 - α)·γB at the start; null if fewer than nine pixels count. */
-function gainAndOffset(
-  picture: Picture,
-  plate: Plate | null,
-  brightness: number,
-  mask: Float64Array,
-  a: Float64Array,
-  c: Float64Array,
-  side: number,
-  left: number,
-  top: number,
-  fromX: number,
-  toX: number,
-  fromY: number,
-  toY: number,
-): { gain: number; offset: number } | null {
-  let aa = 0;
-  let ac = 0;
-  let cc = 0;
-  let ai = 0;
-  let ci = 0;
-  let count = 0;
-  for (let row = fromY; row <= toY; row++) {
-    const pictureRow = (top + row) * picture.widthPx + left;
-    for (let column = fromX; column <= toX; column++) {
-      const u = row * side + column;
-      const m = mask[u];
-      if (m === 0) continue;
-      const behind = plate ? brightness * plate.level[pictureRow + column] : 0;
-      if (Number.isNaN(behind)) continue;
-      const seen = picture.luma[pictureRow + column] - (1 - c[u]) * behind;
-      aa += m * a[u] * a[u];
-      ac += m * a[u] * c[u];
-      cc += m * c[u] * c[u];
-      ai += m * a[u] * seen;
-      ci += m * c[u] * seen;
-      count++;
-    }
-  }
-  const det = aa * cc - ac * ac;
-  if (count < 9 || det <= 1e-9 * aa * cc) return null;
-  return { gain: (ai * cc - ci * ac) / det, offset: (ci * aa - ai * ac) / det };
+/** A mask with the least box that holds it and the sum of its weights. */
+interface Masked {
+  readonly mask: Float64Array;
+  readonly box: Box;
+  readonly weight: number;
 }
 
-/** Inverse of a symmetric positive definite 4 × 4 matrix given by its upper triangle; null if it is not. Gauss-Jordan. */
-function invertSymmetric4(upper: Float64Array): Float64Array | null {
-  const m = new Float64Array(32);
-  for (let i = 0; i < 4; i++) {
-    for (let j = 0; j < 4; j++) m[i * 8 + j] = i <= j ? upper[i * 4 + j] : upper[j * 4 + i];
-    m[i * 8 + 4 + i] = 1;
+function maskedBox(mask: Float64Array, side: number): Masked {
+  let [left, top, right, bottom, weight] = [side, side, -1, -1, 0];
+  for (let u = 0; u < mask.length; u++) {
+    if (mask[u] === 0) continue;
+    weight += mask[u];
+    left = Math.min(left, u % side);
+    right = Math.max(right, u % side);
+    top = Math.min(top, Math.floor(u / side));
+    bottom = Math.max(bottom, Math.floor(u / side));
   }
-  for (let i = 0; i < 4; i++) {
-    const pivot = m[i * 8 + i];
-    if (!(pivot > 1e-12 * upper[i * 5])) return null;
-    for (let j = i; j < 8; j++) m[i * 8 + j] /= pivot;
-    for (let k = 0; k < 4; k++) {
-      if (k === i) continue;
-      const factor = m[k * 8 + i];
-      if (factor !== 0) for (let j = i; j < 8; j++) m[k * 8 + j] -= factor * m[i * 8 + j];
+  return { mask, box: { left, top, right, bottom }, weight };
+}
+
+/** The part of a window's box that lies in the picture. */
+function insideOf(box: Box, left: number, top: number, { widthPx, heightPx }: Picture): Box {
+  return {
+    left: Math.max(box.left, -left),
+    top: Math.max(box.top, -top),
+    right: Math.min(box.right, widthPx - 1 - left),
+    bottom: Math.min(box.bottom, heightPx - 1 - top),
+  };
+}
+
+/** Collects what the frame and the plate show in the window; returns how many pixels count. */
+function gather(
+  { pixel, seen, behind, mask, side }: Fitting,
+  { luma, widthPx }: Picture,
+  plate: Plate | null,
+  brightness: number,
+  box: Box,
+  left: number,
+  top: number,
+): number {
+  let count = 0;
+  for (let row = box.top; row <= box.bottom; row++) {
+    const inPicture = (top + row) * widthPx + left;
+    for (let column = box.left; column <= box.right; column++) {
+      const u = row * side + column;
+      if (mask[u] === 0) continue;
+      const b = plate ? brightness * plate.level[inPicture + column] : 0;
+      if (Number.isNaN(b)) continue;
+      pixel[count++] = u;
+      seen[u] = luma[inPicture + column];
+      behind[u] = b;
     }
   }
-  const inverse = new Float64Array(16);
-  for (let i = 0; i < 4; i++) for (let j = 0; j < 4; j++) inverse[i * 4 + j] = m[i * 8 + 4 + j];
-  return inverse;
+  return count;
 }

@@ -33,6 +33,17 @@ export function refinementMs(
     { xPx: placed.x, yPx: placed.y, radiusPx: patchPx, picture: pictures[0] },
   ]);
   const learner = plate && startLearner(rest.still(), plate);
+  for (let n = movesFrom; n <= extendsAt; n++) {
+    learner?.learn(
+      pictures[n],
+      plate,
+      1,
+      body.xPx[n] - body.xPx[0] + centreX,
+      body.yPx[n] - body.yPx[0] + centreY,
+      0,
+    );
+  }
+  learner?.conclude();
   const model = learner?.model() ?? patchModel(pictures[0], centreX, centreY, half);
   const behind = learner ? plate : null;
   const matcher = makeMatcher(half);

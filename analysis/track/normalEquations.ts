@@ -1,0 +1,248 @@
+import type { Sampled } from './layer.ts';
+
+/** Part of a window, in its own columns and rows, ends included. */
+export interface Box {
+  readonly left: number;
+  readonly top: number;
+  readonly right: number;
+  readonly bottom: number;
+}
+
+/** Unknowns of a match in the order of the equations: place x and y, gain, offset, turn about the body's zero. */
+export const UNKNOWNS = 5;
+
+/** Normal equations of one Gauss-Newton step, with the sums that tell how well the model fits. Buffers are reused. */
+export interface NormalEquations {
+  /** JᵀWJ, upper triangle of UNKNOWNS × UNKNOWNS, row by row. */
+  readonly matrix: Float64Array;
+  /** JᵀWr. */
+  readonly right: Float64Array;
+  /** Sums of weights, of the mask, and of weight times squared residual. */
+  sumW: number;
+  sumMask: number;
+  sumWR2: number;
+  /** Pixels beyond the limit of rejection. */
+  outliers: number;
+}
+
+/** The window's pixels that count, as the frame shows them, and the model there. */
+export interface Fitting {
+  /** Indices into the window, the first `count` of them. */
+  readonly pixel: Int32Array;
+  count: number;
+  /** By window pixel: grey level seen, that of the plate at the frame's brightness, weight of the mask. */
+  readonly seen: Float64Array;
+  readonly behind: Float64Array;
+  readonly mask: Float64Array;
+  /** Appearance and coverage of the model. */
+  readonly appearance: Sampled;
+  readonly coverage: Sampled;
+  readonly side: number;
+}
+
+/** What the weights go by: residuals in the frame, at these sizes [grey levels]. */
+export interface Robustness {
+  /** Beyond this the weight falls as 1/|r| (Huber). */
+  readonly huber: number;
+  /** Beyond this a pixel shows something else: counted, and left out if `rejecting`. */
+  readonly reject: number;
+  readonly rejecting: boolean;
+}
+
+/** Least-squares sums of frame ≈ g·A + o·α + (1 - α)·γB. */
+export interface GainAndOffset {
+  gain: number;
+  offset: number;
+}
+
+/** Gain and offset of the body that fit best where the model stands; false if fewer than nine pixels count or the two cannot be told apart. */
+export function fitGainAndOffset(
+  { pixel, count, seen, behind, mask, appearance, coverage }: Fitting,
+  into: GainAndOffset,
+): boolean {
+  const a = appearance.value;
+  const c = coverage.value;
+  let aa = 0;
+  let ac = 0;
+  let cc = 0;
+  let ai = 0;
+  let ci = 0;
+  for (let k = 0; k < count; k++) {
+    const u = pixel[k];
+    const m = mask[u];
+    const av = a[u];
+    const cv = c[u];
+    const body = seen[u] - (1 - cv) * behind[u];
+    aa += m * av * av;
+    ac += m * av * cv;
+    cc += m * cv * cv;
+    ai += m * av * body;
+    ci += m * cv * body;
+  }
+  const det = aa * cc - ac * ac;
+  if (count < 9 || det <= 1e-9 * aa * cc) return false;
+  into.gain = (ai * cc - ci * ac) / det;
+  into.offset = (ci * aa - ai * ac) / det;
+  return true;
+}
+
+export function emptyEquations(): NormalEquations {
+  return {
+    matrix: new Float64Array(UNKNOWNS * UNKNOWNS),
+    right: new Float64Array(UNKNOWNS),
+    sumW: 0,
+    sumMask: 0,
+    sumWR2: 0,
+    outliers: 0,
+  };
+}
+
+/**
+ * Sums up the equations over the pixels that count. Sums are kept in locals, and the turn's only when it is asked for: this is
+ * the innermost loop of tracking.
+ *
+ * @param turnsAbout  the body's zero in the window's columns and rows, where its turn is an unknown too
+ */
+export function fillEquations(
+  { pixel, count, seen, behind, mask, appearance, coverage, side }: Fitting,
+  { gain, offset }: GainAndOffset,
+  { huber, reject, rejecting }: Robustness,
+  turnsAbout: { readonly x: number; readonly y: number } | null,
+  into: NormalEquations,
+): void {
+  const a = appearance.value;
+  const ax = appearance.slopeX;
+  const ay = appearance.slopeY;
+  const c = coverage.value;
+  const cx = coverage.slopeX;
+  const cy = coverage.slopeY;
+  let xx = 0;
+  let xy = 0;
+  let xa = 0;
+  let xc = 0;
+  let yy = 0;
+  let ya = 0;
+  let yc = 0;
+  let aa = 0;
+  let ac = 0;
+  let cc = 0;
+  let rx = 0;
+  let ry = 0;
+  let ra = 0;
+  let rc = 0;
+  let xt = 0;
+  let yt = 0;
+  let at = 0;
+  let ct = 0;
+  let tt = 0;
+  let rt = 0;
+  let sumW = 0;
+  let sumMask = 0;
+  let sumWR2 = 0;
+  let outliers = 0;
+  for (let k = 0; k < count; k++) {
+    const u = pixel[k];
+    const m = mask[u];
+    const av = a[u];
+    const cv = c[u];
+    const b = behind[u];
+    const r = seen[u] - (gain * av + offset * cv + (1 - cv) * b);
+    const size = r < 0 ? -r : r;
+    let w = m;
+    if (size > huber) {
+      w = (m * huber) / size;
+      if (size > reject) {
+        outliers++;
+        if (rejecting) w = 0;
+      }
+    }
+    const lift = offset - b;
+    const jx = -(gain * ax[u] + lift * cx[u]);
+    const jy = -(gain * ay[u] + lift * cy[u]);
+    const wx = w * jx;
+    const wy = w * jy;
+    const wa = w * av;
+    const wc = w * cv;
+    xx += wx * jx;
+    xy += wx * jy;
+    xa += wx * av;
+    xc += wx * cv;
+    yy += wy * jy;
+    ya += wy * av;
+    yc += wy * cv;
+    aa += wa * av;
+    ac += wa * cv;
+    cc += wc * cv;
+    rx += wx * r;
+    ry += wy * r;
+    ra += wa * r;
+    rc += wc * r;
+    sumW += w;
+    sumMask += m;
+    sumWR2 += w * r * r;
+    if (turnsAbout) {
+      // A turn by θ carries the point (x, y) about the zero by θ (-y, x).
+      const jt = jy * ((u % side) - turnsAbout.x) - jx * (Math.floor(u / side) - turnsAbout.y);
+      const wt = w * jt;
+      xt += wt * jx;
+      yt += wt * jy;
+      at += wt * av;
+      ct += wt * cv;
+      tt += wt * jt;
+      rt += wt * r;
+    }
+  }
+  const { matrix, right } = into;
+  matrix[0] = xx;
+  matrix[1] = xy;
+  matrix[2] = xa;
+  matrix[3] = xc;
+  matrix[4] = xt;
+  matrix[6] = yy;
+  matrix[7] = ya;
+  matrix[8] = yc;
+  matrix[9] = yt;
+  matrix[12] = aa;
+  matrix[13] = ac;
+  matrix[14] = at;
+  matrix[18] = cc;
+  matrix[19] = ct;
+  matrix[24] = turnsAbout ? tt : 1;
+  right[0] = rx;
+  right[1] = ry;
+  right[2] = ra;
+  right[3] = rc;
+  right[4] = rt;
+  into.sumW = sumW;
+  into.sumMask = sumMask;
+  into.sumWR2 = sumWR2;
+  into.outliers = outliers;
+}
+
+/** Zero-normalised cross-correlation of model and frame over the mask. */
+export function likeness(
+  { pixel, count, seen, behind, mask, appearance, coverage }: Fitting,
+  { gain, offset }: GainAndOffset,
+): number {
+  let n = 0;
+  let s = 0;
+  let t = 0;
+  let ss = 0;
+  let tt = 0;
+  let st = 0;
+  for (let k = 0; k < count; k++) {
+    const u = pixel[k];
+    const m = mask[u];
+    const cv = coverage.value[u];
+    const modelled = gain * appearance.value[u] + offset * cv + (1 - cv) * behind[u];
+    n += m;
+    s += m * seen[u];
+    t += m * modelled;
+    ss += m * seen[u] * seen[u];
+    tt += m * modelled * modelled;
+    st += m * seen[u] * modelled;
+  }
+  const varS = ss - (s * s) / n;
+  const varT = tt - (t * t) / n;
+  return varS > 0 && varT > 0 ? (st - (s * t) / n) / Math.sqrt(varS * varT) : 0;
+}
