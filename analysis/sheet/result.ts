@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { distributions } from '../uncertainty/distribution.ts';
 
 /** What the program answers: one result for one sheet. Units are in the names (SI); `u…` is a standard uncertainty. */
 
@@ -52,6 +53,37 @@ const motion = z.object({
   settings: z.record(z.string(), z.unknown()),
 });
 
+/** One source of a key value's uncertainty (JCGM 100:2008): its contribution, and what that is made of where it is known. */
+const budgetRow = z.object({
+  source: z.string(),
+  /** Contribution to the standard uncertainty, in the unit of the key value. */
+  u: z.number(),
+  /** Degrees of freedom; absent: unlimited. */
+  dof: z.number().optional(),
+  distribution: z.enum(distributions).optional(),
+  /** Estimate of the input, its standard uncertainty and their unit. */
+  inputValue: z.number().optional(),
+  uInput: z.number().optional(),
+  inputUnit: z.string().optional(),
+  /** Change of the key value for a change of the input by one of its units. */
+  sensitivity: z.number().optional(),
+});
+
+/** The same budget by propagation of distributions (JCGM 101:2008). */
+const monteCarlo = z.object({
+  seed: z.int(),
+  trials: z.int(),
+  /** Whether the figures came to rest within the numerical tolerance. */
+  settled: z.boolean(),
+  mean: z.number(),
+  u: z.number(),
+  low95: z.number(),
+  high95: z.number(),
+  interval: z.enum(['symmetric', 'shortest']),
+  /** Significant digits of u to which value ± U95 agrees with the interval (clause 8); 0: use the interval. */
+  agreesToDigits: z.int().min(0).max(2),
+});
+
 const keyValue = z.object({
   quantity: z.string(),
   value: z.number(),
@@ -65,7 +97,10 @@ const keyValue = z.object({
   bandwidthHz: z.number().optional(),
   /** How the value is defined, where the name alone leaves a choice. */
   definition: z.string().optional(),
-  budget: z.array(z.object({ source: z.string(), u: z.number() })),
+  budget: z.array(budgetRow),
+  /** Inputs of the budget that are correlated, by their sources. */
+  correlations: z.array(z.object({ between: z.array(z.string()).length(2), r: z.number() })).optional(),
+  monteCarlo: monteCarlo.optional(),
 });
 
 const theory = z.object({

@@ -12,6 +12,20 @@ const gum = JSON.parse(
   readFileSync(new URL('../../fixtures/published/gum-examples.json', import.meta.url), 'utf8'),
 );
 
+interface UnivariateSet {
+  readonly n: number;
+  readonly mean: string;
+  readonly standardDeviation: string;
+  /** All values, or the first and a pair with how often it is repeated. */
+  readonly values?: readonly string[];
+  readonly first?: string;
+  readonly repeat?: readonly string[];
+  readonly times?: number;
+}
+const nist: { readonly datasets: Readonly<Record<string, UnivariateSet>> } = JSON.parse(
+  readFileSync(new URL('../../fixtures/published/nist-univariate.json', import.meta.url), 'utf8'),
+);
+
 describe('typeA', () => {
   it('gives mean and deviation of the twenty temperatures of JCGM 100:2008, 4.4.3', () => {
     const { mean, s, uMean, dof } = typeA(gum['typeA_4.4.3'].readings);
@@ -21,27 +35,18 @@ describe('typeA', () => {
     expect(dof).toBe(19);
   });
 
-  // NIST StRD, univariate, NumAcc1 to 4: certified values from memory (the sets are made by rule). 1e-8: what a double keeps of a
-  // tenth beside 1e7.
-  it.each([
-    ['NumAcc1', [10000001, 10000003, 10000002], 10000002, 1],
-    ['NumAcc2', [1.2, ...Array.from({ length: 1000 }, (_, i) => (i % 2 ? 1.3 : 1.1))], 1.2, 0.1],
-    [
-      'NumAcc3',
-      [1000000.2, ...Array.from({ length: 1000 }, (_, i) => 1000000.1 + (i % 2) / 5)],
-      1000000.2,
-      0.1,
-    ],
-    [
-      'NumAcc4',
-      [10000000.2, ...Array.from({ length: 1000 }, (_, i) => 10000000.1 + (i % 2) / 5)],
-      10000000.2,
-      0.1,
-    ],
-  ])('keeps its digits on %s', (_name, readings, mean, s) => {
-    const found = typeA(readings);
-    expect(Math.abs(found.mean / mean - 1)).toBeLessThan(1e-15);
-    expect(Math.abs(found.s - s)).toBeLessThan(1e-8);
+  // NIST Statistical Reference Datasets, univariate (public domain); which figures were read and which are from memory stands in
+  // fixtures/published/nist-univariate.json. The sets of 1001 are their first value, then a pair 500 times.
+  it.each(Object.entries(nist.datasets))('gives the certified mean and deviation of %s', (_name, set) => {
+    const readings = (set.values ?? [set.first, ...Array(set.times).fill(set.repeat).flat()]).map(Number);
+    expect(readings).toHaveLength(set.n);
+    const { mean, s } = typeA(readings);
+    const certified = Number(set.mean);
+    expect(Math.abs(mean / certified - 1)).toBeLessThan(1e-14);
+    // 1e-9 of the mean's rounding: what a double keeps of a tenth beside 1e7 (NumAcc4) is 1e-8 of it
+    expect(Math.abs(s / Number(set.standardDeviation) - 1)).toBeLessThan(
+      Math.max(1e-13, (4 * Number.EPSILON * Math.abs(certified)) / s),
+    );
   });
 
   it('refuses a single reading', () => {
