@@ -1,3 +1,4 @@
+import { clockFindings } from './clock/clockFindings.ts';
 import { rowTime } from './clock/rowTime.ts';
 import { numbers } from './keyValues/numbers.ts';
 import type { WorldTrack } from './motion/worldTrack.ts';
@@ -32,18 +33,19 @@ export function reduce(input: ReduceInput): Result {
   const worldTracks = tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
   const gravity = siteGravity(sheet.site);
 
+  const frameTimeS = frameTime(timeS, tracks);
   const derived = numbers({
     tracks: worldTracks,
     common: {
       length: calibration.length,
       time: [{ source: 'capture rate', uRel: settled.uCaptureRateRel }],
       uDownRad: calibration.uDownRad,
-      frameTimeS: frameTime(timeS, tracks),
+      frameTimeS,
       exposureS: settled.exposureS,
       metrePerPx: calibration.metrePerPx,
     },
     gravity,
-    sheet,
+    sheet: { ...sheet, tether: settled.tether },
   });
   const decided = verdicts(sheet.limits, derived.keyValues);
 
@@ -63,6 +65,15 @@ export function reduce(input: ReduceInput): Result {
       ...siteFindings(sheet),
       ...calibration.findings,
       ...trackFindings(tracks, sheet.bodies),
+      ...clockFindings({
+        clock: sheet.clock,
+        timeS,
+        frameTimeS,
+        uTimeRel: settled.uCaptureRateRel,
+        uSecondClockS: settled.uSecondClockS,
+        reference: worldTracks.find((t) => t.role === 'reference'),
+        localGMps2: gravity.gMps2,
+      }),
       ...derived.findings,
       ...decided.findings,
     ],

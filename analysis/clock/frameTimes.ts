@@ -1,5 +1,7 @@
 import type { Finding } from '../sheet/result.ts';
 import type { Sheet } from '../sheet/sheet.ts';
+import { rateOfSecondClock } from './secondClock.ts';
+import { coarseTimesFinding, stepFindings, usualStepS } from './stepTimes.ts';
 
 /** What the footage itself says about its frames' times. */
 export interface CodedTimes {
@@ -23,6 +25,7 @@ const remedy = 'state clock.kind "captureRate", or "timestamps" with a list of t
  * @param listedS     the list of times where the clock is one, one entry per frame [s]
  * @param firstFrame  first frame that will be used
  * @param lastFrame   last frame that will be used
+ * @param exposureS   of a frame, where it is stated: it cannot be longer than the time from frame to frame [s]
  * @returns one time per frame of the footage; outside first … last they may be NaN
  */
 export function frameTimes(
@@ -31,14 +34,20 @@ export function frameTimes(
   listedS: Float64Array | null,
   firstFrame: number,
   lastFrame: number,
+  exposureS = 0,
 ): FrameTimes {
   const count = coded.pts.length;
-  if (clock.kind === 'captureRate') {
+  const { secondClock } = clock;
+  if (secondClock && secondClock.toFrame >= count) {
     return {
-      ok: true,
-      timeS: Float64Array.from({ length: count }, (_, n) => n / clock.captureRateHz),
-      findings: [],
+      ok: false,
+      problem: `clock.secondClock.toFrame: frame ${secondClock.toFrame} is beyond the footage's last, ${count - 1}; give a frame that it has`,
     };
+  }
+  if (clock.kind === 'captureRate' || clock.kind === 'secondClock') {
+    const rateHz = clock.kind === 'captureRate' ? clock.captureRateHz : rateOfSecondClock(clock.secondClock);
+    const timeS = Float64Array.from({ length: count }, (_, n) => n / rateHz);
+    return exposureTooLong(exposureS, 1 / rateHz) ?? { ok: true, timeS, findings: [] };
   }
 
   let timeS: Float64Array;
@@ -70,33 +79,18 @@ export function frameTimes(
       };
     }
   }
-  return { ok: true, timeS, findings: unevenFinding(timeS, firstFrame, lastFrame, source) };
+  const usualS = usualStepS(timeS, firstFrame, lastFrame);
+  const findings = stepFindings(timeS, firstFrame, lastFrame, source);
+  if (clock.kind === 'container') {
+    findings.push(...coarseTimesFinding(coded.timeBase.num / coded.timeBase.den, usualS));
+  }
+  return exposureTooLong(exposureS, usualS) ?? { ok: true, timeS, findings };
 }
 
-/** Steps that are not the usual one: dropped frames, or a rate that varies. The times are used as they are. */
-function unevenFinding(
-  timeS: Float64Array,
-  firstFrame: number,
-  lastFrame: number,
-  source: string,
-): Finding[] {
-  const steps = Array.from(
-    { length: lastFrame - firstFrame },
-    (_, i) => timeS[firstFrame + i + 1] - timeS[firstFrame + i],
-  );
-  const usual = medianOf(steps);
-  const odd = steps.filter((s) => Math.abs(s / usual - 1) > 0.5).length;
-  if (odd === 0) return [];
-  return [
-    {
-      level: 'caution',
-      code: 'timesUneven',
-      text: `By ${source}, ${odd} of ${steps.length} steps from frame to frame differ from the usual ${(usual * 1000).toPrecision(4)} ms by more than half: frames may be missing.`,
-    },
-  ];
-}
-
-function medianOf(values: readonly number[]): number {
-  const sorted = [...values].sort((a, b) => a - b);
-  return sorted[sorted.length >> 1] ?? Number.NaN;
+function exposureTooLong(exposureS: number, usualS: number): FrameTimes | null {
+  if (!(exposureS > usualS)) return null;
+  return {
+    ok: false,
+    problem: `camera.exposureS (${exposureS} s) is longer than the time from frame to frame (${Number(usualS.toPrecision(4))} s); check it and the clock`,
+  };
 }

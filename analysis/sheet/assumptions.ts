@@ -1,3 +1,6 @@
+import { type SecondClock, uIntervalUnstatedS } from '../clock/secondClock.ts';
+import { airOf } from '../theory/air.ts';
+import { siteGravity } from '../theory/normalGravity.ts';
 import type { Finding } from './result.ts';
 import type { Sheet, SheetBar } from './sheet.ts';
 
@@ -10,6 +13,8 @@ const assumed = {
   uLengthM: 0.0005,
   /** A mark set by hand at the pixel. */
   uMarkPx: 0.5,
+  /** A tether measured along a steel rule. */
+  uTetherLengthM: 0.001,
   /** A ball hung by eye in the plane of the bar. */
   uPlaneOffsetM: 0.002,
   /** A camera levelled with a spirit level. */
@@ -19,7 +24,12 @@ const assumed = {
 
 /** What the numbers are worked out with: the sheet's statements where it makes them, else the assumption. */
 export interface Settled {
+  /** Relative standard uncertainty of time intervals, whatever the clock. */
   readonly uCaptureRateRel: number;
+  /** Standard uncertainty of the interval on the clock in the picture [s]; 0 where there is none. */
+  readonly uSecondClockS: number;
+  /** The tether with its length's uncertainty. */
+  readonly tether: Sheet['tether'];
   readonly exposureS: number;
   readonly rowTimeS: number;
   readonly bars: readonly Required<SheetBar>[];
@@ -45,18 +55,9 @@ export function settle(sheet: Sheet): Settled {
     return value;
   };
 
-  const { clock, camera, scale, bodies } = sheet;
-  const uCaptureRateRel =
-    clock.kind === 'captureRate'
-      ? take(
-          clock.uCaptureRateRel,
-          assumed.uCaptureRateRel,
-          `capture rate good to ${assumed.uCaptureRateRel} of its value (clock.uCaptureRateRel)`,
-        )
-      : assumed.uCaptureRateRel;
-  if (clock.kind !== 'captureRate') {
-    take(undefined, 0, `times of the footage good to ${assumed.uCaptureRateRel} of any interval`);
-  }
+  const { clock, camera, scale, bodies, tether } = sheet;
+  const uSecondClockS = clock.secondClock ? uIntervalOf(clock.secondClock, take) : 0;
+  const uCaptureRateRel = uTimeOf(clock, uSecondClockS, take);
   const exposureS = take(camera?.exposureS, 0, 'an exposure too short to blur (camera.exposureS)');
   const bars = scale.bars.map((bar, i) => ({
     ...bar,
@@ -97,8 +98,19 @@ export function settle(sheet: Sheet): Settled {
   if (scale.plumb === undefined && scale.bars.length > 0) {
     take(undefined, 0, 'columns of the picture vertical to 0.5° (scale.plumb)');
   }
+  const settledTether = tether && {
+    ...tether,
+    uLengthM: take(
+      tether.uLengthM,
+      assumed.uTetherLengthM,
+      `length of the tether good to ${assumed.uTetherLengthM * 1000} mm (tether.uLengthM)`,
+    ),
+  };
+  for (const what of siteAndAir(sheet)) take(undefined, 0, what);
   return {
     uCaptureRateRel,
+    uSecondClockS,
+    tether: settledTether,
     exposureS,
     rowTimeS: camera?.rowTimeS ?? 0,
     bars,
@@ -108,4 +120,54 @@ export function settle(sheet: Sheet): Settled {
     patchPx,
     findings,
   };
+}
+
+type Take = (stated: number | undefined, value: number, what: string) => number;
+
+function uTimeOf(clock: Sheet['clock'], uSecondClockS: number, take: Take): number {
+  switch (clock.kind) {
+    case 'captureRate':
+      return take(
+        clock.uCaptureRateRel,
+        assumed.uCaptureRateRel,
+        `capture rate good to ${assumed.uCaptureRateRel} of its value (clock.uCaptureRateRel)`,
+      );
+    case 'secondClock':
+      return uSecondClockS / clock.secondClock.intervalS;
+    default:
+      return take(
+        clock.uTimeRel,
+        assumed.uCaptureRateRel,
+        `times of the footage good to ${assumed.uCaptureRateRel} of any interval (clock.uTimeRel)`,
+      );
+  }
+}
+
+function uIntervalOf(secondClock: SecondClock, take: Take): number {
+  const uS = uIntervalUnstatedS(secondClock);
+  return take(
+    secondClock.uIntervalS,
+    uS,
+    `interval on the clock in the picture good to ${Number((1000 * uS).toPrecision(2))} ms, half a frame at each reading (clock.secondClock.uIntervalS)`,
+  );
+}
+
+/** What is taken for a site that is stated in part, and for the air where the drag of a ball is taken off. */
+function siteAndAir({ site, ambient, bodies }: Sheet): string[] {
+  const { uGMps2 } = siteGravity(site);
+  const ofSite = (): string[] => {
+    if (site === undefined) return []; // a caution of its own
+    if ('gMps2' in site) {
+      return site.uGMps2 === undefined ? [`local gravity good to ${uGMps2} m/s² (site.uGMps2)`] : [];
+    }
+    return site.heightM === undefined
+      ? [
+          `a site somewhere from sea level to 1000 m, gravity good to ${Number(uGMps2.toPrecision(2))} m/s² (site.heightM)`,
+        ]
+      : [];
+  };
+  const dragTaken = bodies.some(
+    (b) => b.role === 'reference' && b.diameterM !== undefined && b.massKg !== undefined,
+  );
+  return [...ofSite(), ...(dragTaken ? airOf(ambient).assumed.map((a) => `air of ${a}`) : [])];
 }

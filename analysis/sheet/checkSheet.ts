@@ -2,6 +2,7 @@ import { quantities, unitOfQuantity } from '../verdict/quantities.ts';
 import { sameUnit } from '../verdict/sameUnit.ts';
 import type { Finding } from './result.ts';
 import type { Sheet } from './sheet.ts';
+import { zeroUncertainties } from './zeroUncertainties.ts';
 
 /** A bar shorter than this says little: half a pixel at each end is already 1 %. */
 const shortBarPx = 70;
@@ -11,6 +12,13 @@ export function checkSheet(sheet: Sheet): Finding[] {
   const findings: Finding[] = [];
   const stop = (code: string, text: string) => findings.push({ level: 'stop', code, text });
   const caution = (code: string, text: string) => findings.push({ level: 'caution', code, text });
+
+  for (const path of zeroUncertainties(sheet)) {
+    caution(
+      'uncertaintyZero',
+      `${path} is 0: nothing is known exactly. State its standard uncertainty, or leave it out and see what is assumed.`,
+    );
+  }
 
   const { footage, clock, camera, scale, bodies, tether } = sheet;
   if (footage.lastFrame !== undefined && footage.lastFrame <= footage.firstFrame) {

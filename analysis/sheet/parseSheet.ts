@@ -29,7 +29,7 @@ function problemText(issue: z.core.$ZodIssue, json: unknown): string {
   const where = pathText(issue.path) || 'the sheet';
   const value = valueAt(json, issue.path);
   if (issue.code === 'invalid_union' && issue.path.at(-1) === 'kind') {
-    return `${where}: must be "captureRate", "container" or "timestamps"${value === undefined ? ', but is missing' : `, not ${JSON.stringify(value)}`}`;
+    return `${where}: must be "captureRate", "container", "timestamps" or "secondClock"${value === undefined ? ', but is missing' : `, not ${JSON.stringify(value)}`}`;
   }
   if (issue.code === 'invalid_union' && where === 'motion.method') {
     return `${where}: must be ${motionMethods.map((m) => `"${m}"`).join(', ')}${value === undefined ? '; it is missing' : `, not ${JSON.stringify(value)}`}`;

@@ -1,5 +1,7 @@
 import { z } from 'zod';
+import { loadCellSchema } from './loadCell.ts';
 import { motionSettingsSchema } from './motionSettings.ts';
+import { theorySettingsSchema } from './theorySettings.ts';
 
 /**
  * What the technician states about a drop. Units are in the names (SI); `u…` is a standard uncertainty (k = 1).
@@ -13,14 +15,39 @@ const frameNumber = z.int().min(0);
 
 const pixelPoint = z.object({ x: finite, y: finite });
 
+/** A clock that is seen in the picture: what passed on it from one frame to another. */
+const secondClock = z
+  .object({
+    fromFrame: frameNumber,
+    toFrame: frameNumber,
+    intervalS: positive,
+    /** Standard uncertainty of the interval as read. */
+    uIntervalS: notNegative.optional(),
+  })
+  .refine((c) => c.toFrame > c.fromFrame, 'needs toFrame after fromFrame');
+
+/** With another kind than "secondClock", a second clock is held against the times that are used. */
 const clock = z.discriminatedUnion('kind', [
   z.object({
     kind: z.literal('captureRate'),
     captureRateHz: positive,
     uCaptureRateRel: notNegative.optional(),
+    secondClock: secondClock.optional(),
   }),
-  z.object({ kind: z.literal('container') }),
-  z.object({ kind: z.literal('timestamps'), path: z.string().min(1) }),
+  z.object({
+    kind: z.literal('container'),
+    /** Relative standard uncertainty of intervals by the file's own times. */
+    uTimeRel: notNegative.optional(),
+    secondClock: secondClock.optional(),
+  }),
+  z.object({
+    kind: z.literal('timestamps'),
+    path: z.string().min(1),
+    /** Relative standard uncertainty of intervals by the list of times. */
+    uTimeRel: notNegative.optional(),
+    secondClock: secondClock.optional(),
+  }),
+  z.object({ kind: z.literal('secondClock'), secondClock }),
 ]);
 
 /** Brown radial model: undistorted = centre + (distorted - centre) (1 + k1 r² + k2 r⁴), r = distance / radiusPx. */
@@ -74,6 +101,9 @@ const body = z.object({
   patchPx: finite.min(5).max(401).optional(),
   diameterM: positive.optional(),
   massKg: positive.optional(),
+  /** Drag coefficient referred to the circle of diameterM, for a body that is no smooth sphere; absent: the standard drag curve. */
+  dragCoefficient: positive.optional(),
+  uDragCoefficient: notNegative.optional(),
   /** Places set by hand; they win over what was tracked. */
   marks: z.array(z.object({ frame: frameNumber, x: finite, y: finite })).optional(),
 });
@@ -84,8 +114,11 @@ const tether = z.object({
   /** Horizontal distance of the two ends before release. */
   separationM: notNegative.optional(),
   massKg: positive.optional(),
+  uMassKg: notNegative.optional(),
   links: z.int().min(1).optional(),
+  /** Mass at the free end that is not tether: clamp, hook, and the marker that is followed. 0 says that there is none. */
   tipMassKg: notNegative.optional(),
+  uTipMassKg: notNegative.optional(),
 });
 
 const limit = z
@@ -116,6 +149,8 @@ export const sheetSchema = z.object({
   tether: tether.optional(),
   /** How velocity and acceleration are worked out; absent: the adaptive method. */
   motion: motionSettingsSchema.optional(),
+  theory: theorySettingsSchema.optional(),
+  loadCell: loadCellSchema.optional(),
   limits: z.array(limit).default([]),
 });
 

@@ -54,7 +54,9 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
       timeLeftS: null,
     });
 
-    const times = clockOrRefuse(frameTimes(sheet.clock, index, listedS, firstFrame, lastFrame));
+    const times = clockOrRefuse(
+      frameTimes(sheet.clock, index, listedS, firstFrame, lastFrame, sheet.camera?.exposureS),
+    );
     const result = reduce({
       sheet,
       program,

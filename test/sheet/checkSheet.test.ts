@@ -48,6 +48,16 @@ describe('checkSheet', () => {
       (s) => Object.assign(s.scale.bars?.[0] ?? {}, { b: { x: 60, y: 70 } }),
       'caution barShort',
     ],
+    [
+      'an uncertainty of zero',
+      (s) => Object.assign(s.scale.bars?.[0] ?? {}, { uLengthM: 0 }),
+      'caution uncertaintyZero',
+    ],
+    [
+      'an uncertainty of zero of the clock',
+      (s) => Object.assign(s.clock, { uCaptureRateRel: 0 }),
+      'caution uncertaintyZero',
+    ],
   ])('names %s', (_name, change, expected) => {
     expect(codesOf(change)).toContain(expected);
   });

@@ -49,7 +49,7 @@ describe('parseSheet', () => {
 
   it('says what a clock can be', () => {
     expect(problemsOf((s) => Object.assign(s.clock, { kind: 'sundial' }))[0]).toContain(
-      'must be "captureRate", "container" or "timestamps"',
+      'must be "captureRate", "container", "timestamps" or "secondClock"',
     );
   });
 
