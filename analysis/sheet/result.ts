@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { distributions } from '../uncertainty/distribution.ts';
+import { modelNameSchema } from './theorySettings.ts';
 
 /** What the program answers: one result for one sheet. Units are in the names (SI); `u…` is a standard uncertainty. */
 
@@ -104,14 +105,36 @@ const keyValue = z.object({
 });
 
 const theory = z.object({
-  model: z.enum(['freeFall', 'freeFallDrag', 'foldedTetherEnergy', 'foldedTetherMomentum', 'linkedTether']),
+  model: modelNameSchema,
   /** The body whose track the curve is held against. */
   body: z.string(),
+  /** After the fit; release (releaseS), height before it (startYM) and the factors of the scales are among them. */
   parameters: z.record(z.string(), z.number()),
+  /** Standard uncertainties, what the sheet states taken into account; 0: held. A parameter that nothing settles has none. */
   uParameters: z.record(z.string(), z.number()),
   chiSquared: z.number(),
   dof: z.number(),
   curve: z.object({ timeS: numbers, yM: numbers, vyMps: numbers, ayMps2: numbers }),
+  /** Akaike's information criterion with the correction for few points: the smaller the better, 10 more is decisive. */
+  aicc: z.number().optional(),
+  /** What settles a parameter: the footage, the sheet, both, nothing; or it was held. */
+  settledBy: z.record(z.string(), z.enum(['held', 'footage', 'both', 'sheet', 'nothing'])).optional(),
+  /** Correlation of the free parameters, in the order of `names`. */
+  correlation: z.object({ names: z.array(z.string()), r: z.array(numbers) }).optional(),
+  /** Measured height less the model's, at the frames that were fitted; `standardised` is divided by the uncertainty. */
+  residuals: z.object({ timeS: numbers, yM: numbers, standardised: numbers }).optional(),
+  /** Smallest chi-squared with one parameter held at each value, and the interval that covers 95 % (an end beyond bounds: null). */
+  profiles: z
+    .array(
+      z.object({
+        parameter: z.string(),
+        values: numbers,
+        chiSquared: numbers,
+        from: z.number().nullable(),
+        to: z.number().nullable(),
+      }),
+    )
+    .optional(),
 });
 
 const verdict = z.object({

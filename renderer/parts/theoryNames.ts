@@ -26,5 +26,17 @@ export const theoryNames: Readonly<
     letter: 'M',
     dash: [3, 3],
   },
+  foldedTetherShare: {
+    text: 'folded tether, share of energy kept',
+    short: 'share of energy',
+    letter: 'S',
+    dash: [6, 2, 2, 2],
+  },
+  foldedTetherEndWeight: {
+    text: 'folded tether, end weight found',
+    short: 'end weight',
+    letter: 'W',
+    dash: [14, 2],
+  },
   linkedTether: { text: 'linked tether', short: 'linked tether', letter: 'L', dash: [12, 3, 2, 3] },
 };
