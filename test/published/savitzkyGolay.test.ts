@@ -1,5 +1,9 @@
+import { sgg } from 'ml-savitzky-golay-generalized';
 import { describe, expect, it } from 'vitest';
-import { polynomialFit } from '../../analysis/motion/polynomialFit.ts';
+import { localPolynomial } from '../../analysis/motion/prescribed/localPolynomial.ts';
+import { polynomialWindow } from '../../analysis/motion/prescribed/polynomialWindow.ts';
+import { seededRandom } from '../../fixtures/random.ts';
+import { pieceOf, truthPilot } from '../motion/prescribed/truthPilot.ts';
 import { publishedRows } from './publishedRows.ts';
 
 // A. Savitzky & M. J. E. Golay, Anal. Chem. 36 (1964) 1627, corrected by Steinier et al. 1972 (Anal. Chem. 44 (1972) 1906). The
@@ -13,30 +17,17 @@ const tables = publishedRows('savitzky-golay.csv').map((r) => ({
   weights: r.weights.split(' ').map(Number),
 }));
 
-const factorial = [1, 1, 2];
-
-/** Fit through even samples one apart, evaluated in the middle. */
-function fitOf(values: Float64Array, degree: number) {
-  const n = values.length;
-  const half = (n - 1) / 2;
-  const timeS = Float64Array.from({ length: n }, (_, i) => i - half);
-  const fit = polynomialFit(timeS, values, new Float64Array(n).fill(1), 0, n, 0, half, degree);
-  if (!fit) throw new Error('too few points');
-  return { fit, half };
+/** Weights on even samples one apart, for the middle one. */
+function weightsOf(points: number, degree: number, derivative: number): Float64Array {
+  const window = polynomialWindow(
+    Float64Array.from({ length: points }, (_, i) => i),
+    degree,
+  );
+  if (!window) throw new Error('too few points');
+  return window.weights((points - 1) / 2, derivative);
 }
 
-/** The weights of the estimator, one by one from unit impulses. */
-function weightsOf(points: number, degree: number, derivative: number): number[] {
-  return Array.from({ length: points }, (_, at) => {
-    const { fit, half } = fitOf(
-      new Float64Array(points).map((_v, i) => (i === at ? 1 : 0)),
-      degree,
-    );
-    return (factorial[derivative] * fit.coefficients[derivative]) / half ** derivative;
-  });
-}
-
-describe('polynomialFit gives the tables of Savitzky & Golay, corrected by Steinier et al. 1972', () => {
+describe('the local polynomial gives the tables of Savitzky & Golay, corrected by Steinier et al. 1972', () => {
   it.each(tables)('$points points, degree $degree, derivative $derivative', (table) => {
     const found = weightsOf(table.points, table.degree, table.derivative);
     const scale = Math.max(...table.weights.map(Math.abs)) / table.norm;
@@ -47,10 +38,7 @@ describe('polynomialFit gives the tables of Savitzky & Golay, corrected by Stein
   });
 
   it.each(tables)('and their noise: $points points, degree $degree, derivative $derivative', (table) => {
-    const { fit, half } = fitOf(new Float64Array(table.points), table.degree);
-    const k = table.derivative;
-    const variance = fit.covariance[k * (table.degree + 1) + k];
-    const gain = (factorial[k] * Math.sqrt(variance)) / half ** k;
+    const gain = Math.hypot(...weightsOf(table.points, table.degree, table.derivative));
     // Nine significant digits in the table: rounding is up to 5e-9 of the value.
     expect(Math.abs(gain / table.noiseGain - 1)).toBeLessThan(5e-9);
   });
@@ -64,9 +52,52 @@ describe('polynomialFit gives the tables of Savitzky & Golay, corrected by Stein
     ['7 points, second derivative', 7, 2, 2, 42, [5, 0, -3, -4, -3, 0, 5]],
     ['5 points, first derivative of the cubic', 5, 3, 1, 12, [1, -8, 0, 8, -1]],
   ])('%s', (_name, points, degree, derivative, norm, printed) => {
-    const found = weightsOf(points, degree, derivative).map((w) => w * norm);
-    found.forEach((weight, i) => {
-      expect(Math.abs(weight - printed[i])).toBeLessThan(1e-10);
+    weightsOf(points, degree, derivative).forEach((weight, i) => {
+      expect(Math.abs(weight * norm - printed[i])).toBeLessThan(1e-10);
     });
   });
+});
+
+describe('the method localPolynomial', () => {
+  const stepS = 0.002;
+  const random = seededRandom(11);
+  const piece = pieceOf(
+    120,
+    stepS,
+    (t) => 0.3 * Math.sin(20 * t),
+    1e-4,
+    () => random.gaussian(),
+  );
+  const zero = () => 0;
+
+  it.each([
+    [2, 7],
+    [3, 11],
+    [4, 15],
+    [5, 21],
+  ])(
+    'of degree %d over %d frames gives what a general library gives (ml-savitzky-golay-generalized 5.0.0)',
+    (degree, windowFrames) => {
+      const smoother = localPolynomial
+        .with({ method: 'localPolynomial', degree, windowFrames })
+        ?.smoother(piece, truthPilot(piece, zero, zero, zero));
+      const found = smoother?.apply(piece.valueM);
+      const half = (windowFrames - 1) / 2;
+      [found?.position, found?.velocity, found?.acceleration].forEach((values, derivative) => {
+        const library = sgg(piece.valueM, stepS, {
+          windowSize: windowFrames,
+          derivative,
+          polynomial: degree,
+        });
+        const size = Math.max(...library.map(Math.abs));
+        expect(values).toHaveLength(library.length);
+        // The same least squares by other arithmetic. Within half a window of the ends the library shifts its window as well.
+        library.forEach((value, i) => {
+          if (i >= half && i < library.length - half) {
+            expect(Math.abs((values?.[i] ?? Number.NaN) - value)).toBeLessThan(1e-8 * size);
+          }
+        });
+      });
+    },
+  );
 });
