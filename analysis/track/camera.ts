@@ -1,7 +1,7 @@
 import type { Finding } from '../sheet/result.ts';
 import { type CameraShift, makeShiftGauge, type ShiftGauge } from './cameraShift.ts';
 import type { Plate } from './match.ts';
-import type { RestPlace } from './plate.ts';
+import { plateFrom, type RestPlace } from './plate.ts';
 import type { SampledFrame } from './sampling.ts';
 import { shiftableImage } from './shiftImage.ts';
 
@@ -81,7 +81,7 @@ export function shakenPlate(plate: Plate): ShakenPlate {
   return {
     plateAt({ xPx, yPx }) {
       if (Math.hypot(xPx - last.xPx, yPx - last.yPx) > samePx) {
-        last = { xPx, yPx, plate: { ...plate, level: image.shifted(xPx, yPx) } };
+        last = { xPx, yPx, plate: plateFrom(image.shifted(xPx, yPx), plate.widthPx, plate.heightPx) };
       }
       return last.plate;
     },

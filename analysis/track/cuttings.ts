@@ -22,7 +22,7 @@ export interface Cuttings {
 }
 
 /** Room for one body's cuttings [bytes]: a thousand frames of a usual patch. */
-const roomBytes = 48 * 1024 * 1024;
+const roomBytes = 128 * 1024 * 1024;
 /** Pixels around the window: a body's place may still move by this much, and its model reaches a little further. */
 const margin = 10;
 
@@ -43,16 +43,28 @@ export function startCuttings(half: number): Cuttings {
         picture.luma instanceof Uint8Array
           ? new Uint8Array(widthPx * heightPx)
           : new Uint16Array(widthPx * heightPx);
-      const level = plate ? new Float32Array(widthPx * heightPx) : null;
+      const part = (whole: Float32Array) => {
+        const cut = new Float32Array(widthPx * heightPx);
+        for (let row = 0; row < heightPx; row++) {
+          const from = (top + row) * picture.widthPx + left;
+          cut.set(whole.subarray(from, from + widthPx), row * widthPx);
+        }
+        return cut;
+      };
       for (let row = 0; row < heightPx; row++) {
         const from = (top + row) * picture.widthPx + left;
         luma.set(picture.luma.subarray(from, from + widthPx), row * widthPx);
-        if (plate) level?.set(plate.level.subarray(from, from + widthPx), row * widthPx);
       }
-      usedBytes += luma.byteLength + (level?.byteLength ?? 0);
+      usedBytes += luma.byteLength + (plate ? 3 * 4 * widthPx * heightPx : 0);
       kept.set(n, {
         picture: { widthPx, heightPx, bitDepth: picture.bitDepth, luma },
-        plate: level ? { widthPx, heightPx, level } : null,
+        plate: plate && {
+          widthPx,
+          heightPx,
+          level: part(plate.level),
+          slopeX: part(plate.slopeX),
+          slopeY: part(plate.slopeY),
+        },
         brightness,
         left,
         top,

@@ -1,10 +1,10 @@
 import type { BodyState } from '../sheet/result.ts';
 import { blurModel } from './blur.ts';
 import { startCuttings } from './cuttings.ts';
-import { hiddenAtRest } from './hidden.ts';
-import { makeLayer, REACH } from './layer.ts';
-import { cutPlate, type StillBody } from './learnBody.ts';
+import { makeLayer } from './layer.ts';
+import type { StillBody } from './learnBody.ts';
 import { startLearner } from './learner.ts';
+import { lookAgain } from './lookAgain.ts';
 import { type BodyModel, type Match, makeMatcher, type Plate } from './match.ts';
 import { cutOut, roundMask } from './patchModel.ts';
 import { brightnessOf } from './plate.ts';
@@ -54,7 +54,7 @@ const acrossGapFrom = 8;
 /** A body out of sight for longer is lost: what comes back may be another. */
 export const longestGap = 20;
 /** Below this the patch is not the body, whatever the light. */
-const leastScore = 0.5;
+export const leastScore = 0.5;
 /** By so much the usual score sinks before a body is taken to turn. */
 const turningFall = 0.01;
 /** … if the residual looks like a turn by at least this much. */
@@ -203,6 +203,7 @@ export function startFollower(
     }
     remember(n, found.xPx, found.yPx);
     usualScore += 0.1 * (Math.min(found.score, 1) - usualScore);
+    learner?.weigh(found);
     cuttings.keep(n, picture, behind, brightness, found.xPx, found.yPx);
     const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
     turning ||= sightings.length > still.frames && turns(picture, found, behind, brightness);
@@ -220,85 +221,20 @@ export function startFollower(
       sightings.push(follow(n, picture, usedPlate && (plateNow ?? usedPlate)));
     },
     finish() {
-      // The first frames were matched with what was known of the body then: match the kept ones again with what is known now,
-      // learn once more from the better places, and match for good.
-      for (let round = 0; round < 2; round++) {
-        const speeds = speedsOf(sightings);
-        if (round > 0) learner?.restart();
-        if (round > 0 && learner) {
-          for (const [i, cut] of cuttings.of(sightings.slice(0, steady))) {
-            const s = sightings[i];
-            const speed = speeds[i];
-            learner.learn(
-              cut.picture,
-              cut.plate,
-              cut.brightness,
-              s.xPx - markX - cut.left,
-              s.yPx - markY - cut.top,
-              exposureShare * Math.hypot(speed.x, speed.y),
-            );
-          }
-        }
-        learner?.conclude();
-        model = learner?.model() ?? model;
-        const rest = sightings.slice(0, still.frames).filter((s) => s.state === 'measured');
-        if (usedPlate && rest.length > 0) {
-          const behind = cutPlate(usedPlate, centreX, centreY, half + REACH);
-          const mean = (of: (s: Sighting) => number) => rest.reduce((sum, s) => sum + of(s), 0) / rest.length;
-          const hidden = hiddenAtRest(
-            still,
-            behind,
-            model,
-            mean((s) => s.xPx) - body.xPx,
-            mean((s) => s.yPx) - body.yPx,
-          );
-          if (hidden) cuttings.disregard(centreX, centreY, 2 * half + 1, hidden);
-        }
-        for (const [i, cut] of cuttings.of(sightings.slice(0, steady))) {
-          const s = sightings[i];
-          const speed = speeds[i];
-          const blurred = blurModel(model, speed.x * exposureShare, speed.y * exposureShare);
-          const m = matcher.match(
-            cut.picture,
-            blurred,
-            s.xPx - markX - cut.left,
-            s.yPx - markY - cut.top,
-            noise,
-            cut.plate,
-            cut.brightness,
-          );
-          if (m?.converged && m.score > leastScore) {
-            sightings[i] = sighting(s.n, 'measured', { ...m, xPx: m.xPx + cut.left, yPx: m.yPx + cut.top });
-          }
-        }
-      }
-      return sightings;
+      return lookAgain(sightings, {
+        body,
+        still,
+        plate: usedPlate,
+        model,
+        learner,
+        matcher,
+        cuttings,
+        steady,
+        exposureShare,
+        sighting,
+      });
     },
   };
-}
-
-/** Speed of the body at each sighting [px per frame], from the parabola through its neighbours; zero where it stands alone. */
-function speedsOf(sightings: readonly Sighting[]): { x: number; y: number }[] {
-  return sightings.map((s, i) => {
-    const near = sightings
-      .slice(Math.max(0, i - 2), i + 3)
-      .filter((o) => o.state === 'measured' || o.state === 'manual');
-    if (near.length < 2 || Number.isNaN(s.xPx)) return { x: 0, y: 0 };
-    const frames = near.map((o) => o.n);
-    // Backwards in time the frames descend: the rate is per frame of the footage all the same.
-    return {
-      x: predict(
-        frames,
-        near.map((o) => o.xPx),
-        s.n,
-      ).rate,
-      y: predict(
-        frames,
-        near.map((o) => o.yPx),
-        s.n,
-      ).rate,
-    };
-  });
 }
 
 function meanPatchModel(still: StillBody): BodyModel {
@@ -306,6 +242,7 @@ function meanPatchModel(still: StillBody): BodyModel {
     half: still.half,
     appearance: makeLayer(still.mean.slice(), still.half),
     coverage: null,
+    spreadPx2: 0,
     mask: roundMask(still.half),
   };
 }

@@ -1,5 +1,6 @@
 import { makeLayer, REACH } from './layer.ts';
 import type { BodyModel, Plate } from './match.ts';
+import { slopesOf } from './spline.ts';
 
 /** What was seen of a body while it rested, around the whole pixel that is its zero. */
 export interface StillBody {
@@ -73,23 +74,41 @@ export interface MovingMean {
 
 /**
  * Appearance times coverage A of a body with coverage α in front of a plate. Rest frames alone give
- * A = S - (1 - α) B, exact for the background they had; the moving frames' mean makes it right for background in general.
+ * A = S - (1 - α) B + s ∇α·∇B, exact for the background they had; the moving frames' mean makes it right for background in
+ * general.
  */
 export function coveredAppearance(
   still: StillBody,
   behind: Float64Array,
   coverage: Float64Array,
+  spreadPx2: number,
   moving: MovingMean | null,
 ): Float64Array {
   const share = moving ? moving.frames / (moving.frames + still.frames) : 0;
+  const smear = smearOf(coverage, behind, spreadPx2);
   return still.mean.map((s, i) => {
-    const atRest = s - (1 - coverage[i]) * behind[i];
+    const atRest = s - (1 - coverage[i]) * behind[i] + smear[i];
     return moving ? atRest + share * (moving.appearance[i] - atRest) : atRest;
   });
 }
 
+/** What optics smear from the background into the rim of a body, s ∇α·∇B, on a square window. */
+export function smearOf(coverage: Float64Array, behind: Float64Array, spreadPx2: number): Float64Array {
+  const side = Math.sqrt(coverage.length);
+  const rim = slopesOf(coverage, side, side);
+  const board = slopesOf(behind, side, side);
+  return coverage.map(
+    (_, u) => spreadPx2 * (rim.slopeX[u] * board.slopeX[u] + rim.slopeY[u] * board.slopeY[u]),
+  );
+}
+
 /** A model from appearance times coverage and coverage, both on the window with its border. */
-export function coveredModel(half: number, appearance: Float64Array, coverage: Float64Array): BodyModel {
+export function coveredModel(
+  half: number,
+  appearance: Float64Array,
+  coverage: Float64Array,
+  spreadPx2: number,
+): BodyModel {
   const wide = 2 * (half + REACH) + 1;
   const side = 2 * half + 1;
   const mask = new Float64Array(side * side);
@@ -108,6 +127,7 @@ export function coveredModel(half: number, appearance: Float64Array, coverage: F
     half,
     appearance: makeLayer(appearance.slice(), half),
     coverage: makeLayer(coverage.slice(), half),
+    spreadPx2,
     mask,
   };
 }

@@ -4,6 +4,7 @@ import {
   emptyEquations,
   type Fitting,
   fillEquations,
+  fillFree,
   fitGainAndOffset,
   likeness,
   UNKNOWNS,
@@ -14,8 +15,11 @@ import type { Picture } from './track.ts';
 /**
  * What a body looks like, around its own zero (the place that was marked).
  *
- * A frame is modelled as I(x) = g·A(x - p) + o·α(x - p) + γ·(1 - α(x - p))·B(x): appearance times coverage A, coverage α,
- * plate B, gain and offset of the body g and o, brightness of the whole frame γ. Without a plate α is 1 and B vanishes.
+ * A frame is modelled as I(x) = g·A(x - p) + o·α(x - p) + γ·[(1 - α(x - p))·B(x) - s·∇α(x - p)·∇B(x)]: appearance times
+ * coverage A, coverage α, plate B, gain and offset of the body g and o, brightness of the whole frame γ. Without a plate α is 1
+ * and B vanishes. The last term is there because optics smear what the body leaves free of the background, not each by itself:
+ * with a point spread of variance s the smeared product of two fields is the product of the smeared ones plus s times that of
+ * their slopes (first term of the Gaussian's expansion).
  */
 export interface BodyModel {
   readonly half: number;
@@ -23,6 +27,8 @@ export interface BodyModel {
   readonly appearance: Layer;
   /** Coverage 0 … 1; null: everything in the mask is the body. */
   readonly coverage: Layer | null;
+  /** Variance of the optics' point spread along one axis, the pixel's own width included [px²]. */
+  readonly spreadPx2: number;
   /** Weight of each pixel of the window, 0 … 1; (2 · half + 1)² values. */
   readonly mask: Float64Array;
 }
@@ -32,6 +38,9 @@ export interface Plate {
   readonly widthPx: number;
   readonly heightPx: number;
   readonly level: Float32Array;
+  /** Slopes of the level [grey levels per px]. */
+  readonly slopeX: Float32Array;
+  readonly slopeY: Float32Array;
 }
 
 export interface Match {
@@ -48,6 +57,9 @@ export interface Match {
   readonly score: number;
   /** Contrast of the body in the frame relative to its model. */
   readonly gain: number;
+  /** What the residual says of the model's spread: sums of r·t/σ² and t²/σ², where r = Δs·t. */
+  readonly spreadPull: number;
+  readonly spreadWeight: number;
   /** Share of the mask's weight that lies inside the picture. */
   readonly inside: number;
   readonly converged: boolean;
@@ -100,13 +112,28 @@ export function makeMatcher(half: number): Matcher {
   const pixel = new Int32Array(side * side);
   const seen = new Float64Array(side * side);
   const behind = new Float64Array(side * side);
+  const behindX = new Float64Array(side * side);
+  const behindY = new Float64Array(side * side);
+  const free = new Float64Array(side * side);
   let masked: Masked | null = null;
 
   return {
     match(picture, model, startXPx, startYPx, sigma, plate, brightness) {
       const { mask, appearance, coverage } = model;
       if (masked?.mask !== mask) masked = maskedBox(mask, side);
-      const fitting: Fitting = { pixel, count: 0, seen, behind, mask, appearance: a, coverage: c, side };
+      const fitting: Fitting = {
+        pixel,
+        count: 0,
+        seen,
+        behind,
+        behindX,
+        behindY,
+        free,
+        mask,
+        appearance: a,
+        coverage: c,
+        side,
+      };
       const level = { gain: 1, offset: 0 };
       let x = startXPx;
       let y = startYPx;
@@ -134,6 +161,7 @@ export function makeMatcher(half: number): Matcher {
         const dy = y - wholeY;
         sampler.sample(appearance, dx, dy, a, box);
         if (coverage) sampler.sample(coverage, dx, dy, c, box);
+        fillFree(fitting, model.spreadPx2);
         if (steps === 1 && !fitGainAndOffset(fitting, level)) return null;
         const rejecting = lengthPx < nearPx;
         const robustness = { huber: huberAt * noise, reject: rejectAt * noise, rejecting };
@@ -173,7 +201,7 @@ export function makeMatcher(half: number): Matcher {
         const converged = weightsStand && lengthPx < beforePx && nextPx < enoughPx;
         if (converged || steps === mostSteps) {
           const remaining = Math.max(equations.sumWR2 - gained, 0) / Math.max(sumW - 4, 1);
-          const score = likeness(fitting, level);
+          const { score, spreadPull, spreadWeight } = likeness(fitting, level);
           return {
             xPx: x,
             yPx: y,
@@ -182,6 +210,8 @@ export function makeMatcher(half: number): Matcher {
             covXYPx2: remaining * inverse[1],
             residual: Math.sqrt(remaining),
             score,
+            spreadPull: spreadPull / remaining,
+            spreadWeight: spreadWeight / remaining,
             gain: level.gain + step[2],
             inside,
             converged: converged || lengthPx < goodEnoughPx,
@@ -227,7 +257,7 @@ function insideOf(box: Box, left: number, top: number, { widthPx, heightPx }: Pi
 
 /** Collects what the frame and the plate show in the window; returns how many pixels count. */
 function gather(
-  { pixel, seen, behind, mask, side }: Fitting,
+  { pixel, seen, behind, behindX, behindY, mask, side }: Fitting,
   { luma, widthPx }: Picture,
   plate: Plate | null,
   brightness: number,
@@ -246,6 +276,8 @@ function gather(
       pixel[count++] = u;
       seen[u] = luma[inPicture + column];
       behind[u] = b;
+      behindX[u] = plate ? brightness * plate.slopeX[inPicture + column] : 0;
+      behindY[u] = plate ? brightness * plate.slopeY[inPicture + column] : 0;
     }
   }
   return count;

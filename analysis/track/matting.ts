@@ -1,4 +1,5 @@
 import { REACH } from './layer.ts';
+import { smearOf } from './learnBody.ts';
 import type { Plate } from './match.ts';
 import { quinticCoefficients, quinticWeights, TAPS, TAPS_BEFORE } from './spline.ts';
 import type { Picture } from './track.ts';
@@ -6,17 +7,18 @@ import type { Picture } from './track.ts';
 /**
  * Learns how much of each pixel a body covers from the frames in which it passes over different background: over known
  * backgrounds B_i a pixel of the body shows I_i = A + (1 - α) B_i, a straight line whose slope is 1 - α (triangulation
- * matting, Smith & Blinn, SIGGRAPH 1996, 259).
+ * matting, Smith & Blinn, SIGGRAPH 1996, 259), once what the optics smear in is taken off.
  */
 export interface Matting {
-  /** One frame in which the body's zero is at (xPx, yPx). */
-  add(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): void;
+  /** One frame in which the body's zero is at (xPx, yPx); `rim`: what is known of its coverage, and the point spread. */
+  add(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number, rim: Rim): void;
   readonly frames: number;
   /** The frame about the body's zero, and the plate there, of the frame added or looked at last. */
+  /** The frame, what the optics smear in taken off. */
   readonly seen: Float64Array;
   readonly behind: Float64Array;
   /** Only looks: fills `seen` and `behind`; false when the window reaches out of the picture. */
-  look(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): boolean;
+  look(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number, rim: Rim): boolean;
   /**
    * Coverage on the window with its border: the slope weighed against the first guess by how well the background told it.
    *
@@ -26,6 +28,12 @@ export interface Matting {
   coverage(guess: Float64Array, uGuess: Float64Array, noise: number): Float64Array;
   /** Appearance times coverage as the frames show it on average: mean I - (1 - α) mean B. */
   appearance(coverage: Float64Array): Float64Array;
+}
+
+/** Coverage as it is known, and the variance of the point spread that smears over its rim. */
+export interface Rim {
+  readonly coverage: Float64Array;
+  readonly spreadPx2: number;
 }
 
 export function startMatting(half: number): Matting {
@@ -44,7 +52,14 @@ export function startMatting(half: number): Matting {
   const behind = new Float64Array(n);
   let frames = 0;
 
-  const look = (picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): boolean => {
+  const look = (
+    picture: Picture,
+    plate: Plate,
+    brightness: number,
+    xPx: number,
+    yPx: number,
+    { coverage, spreadPx2 }: Rim,
+  ): boolean => {
     const cx = Math.round(xPx);
     const cy = Math.round(yPx);
     if (cx - reach < 0 || cy - reach < 0 || cx + reach >= picture.widthPx || cy + reach >= picture.heightPx)
@@ -58,6 +73,8 @@ export function startMatting(half: number): Matting {
     }
     resample(cut, wide, xPx - cx, yPx - cy, seen, side);
     resample(cutB, wide, xPx - cx, yPx - cy, behind, side);
+    const smear = smearOf(coverage, behind, spreadPx2);
+    for (let u = 0; u < n; u++) seen[u] += smear[u];
     return true;
   };
 
@@ -65,8 +82,8 @@ export function startMatting(half: number): Matting {
     seen,
     behind,
     look,
-    add(picture, plate, brightness, xPx, yPx) {
-      if (!look(picture, plate, brightness, xPx, yPx)) return;
+    add(picture, plate, brightness, xPx, yPx, rim) {
+      if (!look(picture, plate, brightness, xPx, yPx, rim)) return;
       for (let u = 0; u < n; u++) {
         b[u] += behind[u];
         bb[u] += behind[u] * behind[u];

@@ -33,6 +33,11 @@ export interface Fitting {
   /** By window pixel: grey level seen, that of the plate at the frame's brightness, weight of the mask. */
   readonly seen: Float64Array;
   readonly behind: Float64Array;
+  /** Slopes of the plate there. */
+  readonly behindX: Float64Array;
+  readonly behindY: Float64Array;
+  /** What the plate adds to the model: (1 - α)·B - s·∇α·∇B. */
+  readonly free: Float64Array;
   readonly mask: Float64Array;
   /** Appearance and coverage of the model. */
   readonly appearance: Sampled;
@@ -55,9 +60,21 @@ export interface GainAndOffset {
   offset: number;
 }
 
+/** Fills `free` for a point spread of the given variance. */
+export function fillFree(
+  { pixel, count, behind, behindX, behindY, free, coverage }: Fitting,
+  spreadPx2: number,
+): void {
+  const { value, slopeX, slopeY } = coverage;
+  for (let k = 0; k < count; k++) {
+    const u = pixel[k];
+    free[u] = (1 - value[u]) * behind[u] - spreadPx2 * (slopeX[u] * behindX[u] + slopeY[u] * behindY[u]);
+  }
+}
+
 /** Gain and offset of the body that fit best where the model stands; false if fewer than nine pixels count or the two cannot be told apart. */
 export function fitGainAndOffset(
-  { pixel, count, seen, behind, mask, appearance, coverage }: Fitting,
+  { pixel, count, seen, free, mask, appearance, coverage }: Fitting,
   into: GainAndOffset,
 ): boolean {
   const a = appearance.value;
@@ -72,7 +89,7 @@ export function fitGainAndOffset(
     const m = mask[u];
     const av = a[u];
     const cv = c[u];
-    const body = seen[u] - (1 - cv) * behind[u];
+    const body = seen[u] - free[u];
     aa += m * av * av;
     ac += m * av * cv;
     cc += m * cv * cv;
@@ -104,7 +121,7 @@ export function emptyEquations(): NormalEquations {
  * @param turnsAbout  the body's zero in the window's columns and rows, where its turn is an unknown too
  */
 export function fillEquations(
-  { pixel, count, seen, behind, mask, appearance, coverage, side }: Fitting,
+  { pixel, count, seen, behind, free, mask, appearance, coverage, side }: Fitting,
   { gain, offset }: GainAndOffset,
   { huber, reject, rejecting }: Robustness,
   turnsAbout: { readonly x: number; readonly y: number } | null,
@@ -145,8 +162,7 @@ export function fillEquations(
     const m = mask[u];
     const av = a[u];
     const cv = c[u];
-    const b = behind[u];
-    const r = seen[u] - (gain * av + offset * cv + (1 - cv) * b);
+    const r = seen[u] - (gain * av + offset * cv + free[u]);
     const size = r < 0 ? -r : r;
     let w = m;
     if (size > huber) {
@@ -156,7 +172,7 @@ export function fillEquations(
         if (rejecting) w = 0;
       }
     }
-    const lift = offset - b;
+    const lift = offset - behind[u];
     const jx = -(gain * ax[u] + lift * cx[u]);
     const jy = -(gain * ay[u] + lift * cy[u]);
     const wx = w * jx;
@@ -219,30 +235,45 @@ export function fillEquations(
   into.outliers = outliers;
 }
 
-/** Zero-normalised cross-correlation of model and frame over the mask. */
+/** How like the frame the model is, and what the residual says of its spread. */
+export interface Likeness {
+  /** Zero-normalised cross-correlation of model and frame over the mask. */
+  readonly score: number;
+  /** Sums of r·t and t² over the pixels, where t is what a unit of spread adds to the model. */
+  readonly spreadPull: number;
+  readonly spreadWeight: number;
+}
+
 export function likeness(
-  { pixel, count, seen, behind, mask, appearance, coverage }: Fitting,
+  { pixel, count, seen, behindX, behindY, free, mask, appearance, coverage }: Fitting,
   { gain, offset }: GainAndOffset,
-): number {
+): Likeness {
+  const { value, slopeX, slopeY } = coverage;
   let n = 0;
   let s = 0;
   let t = 0;
   let ss = 0;
   let tt = 0;
   let st = 0;
+  let spreadPull = 0;
+  let spreadWeight = 0;
   for (let k = 0; k < count; k++) {
     const u = pixel[k];
     const m = mask[u];
-    const cv = coverage.value[u];
-    const modelled = gain * appearance.value[u] + offset * cv + (1 - cv) * behind[u];
+    const level = seen[u];
+    const modelled = gain * appearance.value[u] + offset * value[u] + free[u];
     n += m;
-    s += m * seen[u];
+    s += m * level;
     t += m * modelled;
-    ss += m * seen[u] * seen[u];
+    ss += m * level * level;
     tt += m * modelled * modelled;
-    st += m * seen[u] * modelled;
+    st += m * level * modelled;
+    const smear = -(slopeX[u] * behindX[u] + slopeY[u] * behindY[u]);
+    spreadPull += m * smear * (level - modelled);
+    spreadWeight += m * smear * smear;
   }
   const varS = ss - (s * s) / n;
   const varT = tt - (t * t) / n;
-  return varS > 0 && varT > 0 ? (st - (s * t) / n) / Math.sqrt(varS * varT) : 0;
+  const score = varS > 0 && varT > 0 ? (st - (s * t) / n) / Math.sqrt(varS * varT) : 0;
+  return { score, spreadPull, spreadWeight };
 }

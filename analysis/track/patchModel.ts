@@ -41,6 +41,7 @@ export function patchModel(picture: Picture, centreX: number, centreY: number, h
     half,
     appearance: makeLayer(cutOut(picture, centreX, centreY, half + REACH), half),
     coverage: null,
+    spreadPx2: 0,
     mask: roundMask(half),
   };
 }

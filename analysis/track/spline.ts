@@ -72,3 +72,34 @@ export function quinticWeights(t: number, weights: Float64Array, slopes: Float64
     slopes[k] = slope / 24;
   }
 }
+
+/** Slopes, at the samples themselves, of the quintic spline through width · height values [per sample]. */
+export function slopesOf(
+  values: ArrayLike<number>,
+  width: number,
+  height: number,
+): { slopeX: Float64Array; slopeY: Float64Array } {
+  const coefficients = quinticCoefficients(Float64Array.from(values), width, height);
+  const weights = new Float64Array(TAPS);
+  const slopes = new Float64Array(TAPS);
+  quinticWeights(0, weights, slopes);
+  const along = (taps: Float64Array, from: Float64Array, stepX: number, stepY: number) => {
+    const out = new Float64Array(from.length);
+    for (let y = 0; y < height; y++) {
+      for (let x = 0; x < width; x++) {
+        let sum = 0;
+        for (let k = 0; k < TAPS; k++) {
+          const tapX = Math.min(width - 1, Math.max(0, x + stepX * (k - TAPS_BEFORE)));
+          const tapY = Math.min(height - 1, Math.max(0, y + stepY * (k - TAPS_BEFORE)));
+          sum += taps[k] * from[tapY * width + tapX];
+        }
+        out[y * width + x] = sum;
+      }
+    }
+    return out;
+  };
+  return {
+    slopeX: along(slopes, along(weights, coefficients, 0, 1), 1, 0),
+    slopeY: along(slopes, along(weights, coefficients, 1, 0), 0, 1),
+  };
+}

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { judgeCamera, registered, shakenPlate } from '../../analysis/track/camera.ts';
 import { makeShiftGauge } from '../../analysis/track/cameraShift.ts';
-import { plateOf } from '../../analysis/track/plate.ts';
+import { plateFrom, plateOf } from '../../analysis/track/plate.ts';
 import { shiftableImage } from '../../analysis/track/shiftImage.ts';
 import type { Picture } from '../../analysis/track/track.ts';
 import { seededRandom } from '../../fixtures/random.ts';
@@ -85,7 +85,7 @@ describe('judgeCamera', () => {
 describe('shakenPlate', () => {
   it('shows the board as the moved camera sees it', () => {
     const still = board(0, 0, 0, 1);
-    const plate = { widthPx, heightPx, level: Float32Array.from(still.luma) };
+    const plate = plateFrom(Float32Array.from(still.luma), widthPx, heightPx);
     const seen = shakenPlate(plate).plateAt({ xPx: 1.3, yPx: -0.6, uPx: 0.01 });
     const truth = board(1.3, -0.6, 0, 1);
     // Both are rounded to whole levels: 0.29 each, through the spline.

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { brightnessOf, plateOf } from '../../analysis/track/plate.ts';
+import { brightnessOf, plateFrom, plateOf } from '../../analysis/track/plate.ts';
 import { startSampling } from '../../analysis/track/sampling.ts';
 import { type MovingBody, makeMovingBody } from '../../fixtures/movingBody.ts';
 
@@ -45,7 +45,7 @@ describe('plateOf', () => {
 describe('brightnessOf', () => {
   it('measures a flickering lamp to a thousandth, a body in the picture or not', () => {
     const { frames } = makeMovingBody({ ...film, path: () => ({ x: 40, y: 100 }) });
-    const plate = { widthPx: 90, heightPx: 200, level: Float32Array.from(empty.luma) };
+    const plate = plateFrom(Float32Array.from(empty.luma), 90, 200);
     const dim = { ...frames[0], luma: frames[0].luma.map((v) => Math.round(0.9 * v)) };
     expect(brightnessOf(dim, plate)).toBeCloseTo(0.9, 2);
     expect(brightnessOf(frames[0], plate)).toBeCloseTo(1, 2);
