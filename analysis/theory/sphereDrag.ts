@@ -1,3 +1,6 @@
+/** Relative standard uncertainty of the curve where a falling ball lives: what the correlations in use differ by. */
+export const uSphereDragRel = 0.1;
+
 /**
  * Drag coefficient of a smooth sphere in steady motion: the standard drag curve.
  *

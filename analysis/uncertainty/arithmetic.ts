@@ -21,6 +21,8 @@ export interface Arithmetic<T> {
   atan2(y: Operand<T>, x: Operand<T>): T;
   hypot(a: Operand<T>, b: Operand<T>): T;
   abs(x: Operand<T>): T;
+  /** A smooth function that exists for plain numbers only (a table, a correlation): its derivatives by differences. */
+  through(f: (x: number) => number, x: Operand<T>): T;
 }
 
 /** Plain numbers. */
@@ -48,4 +50,5 @@ export const plainNumbers: Arithmetic<number> = {
   atan2: Math.atan2,
   hypot: (a, b) => Math.hypot(a, b),
   abs: Math.abs,
+  through: (f, x) => f(x),
 };

@@ -5,6 +5,7 @@ import { addDemo } from './demo.ts';
 import { addLogList } from './logList.ts';
 import { addLogShow } from './logShow.ts';
 import { addLogVerify } from './logVerify.ts';
+import { addPlan } from './plan.ts';
 import { addReduce } from './reduce.ts';
 import { tell } from './tell.ts';
 
@@ -32,6 +33,7 @@ export async function commandLine(args: readonly string[]): Promise<number> {
     .configureOutput({ writeErr: () => {}, outputError: () => {} }); // tell() says it in one line
   addReduce(root);
   addCheck(root);
+  addPlan(root);
   addDemo(root);
   const log = root.command('log').description('look into the log: the reductions that were saved');
   addLogList(log);

@@ -78,6 +78,15 @@ describe('dual numbers', () => {
     );
   });
 
+  it('differentiates a function of plain numbers by differences', () => {
+    const m = dualNumbers(1, true);
+    const { value, slope, curvature } = m.through((x) => x ** 3, m.multiply(2, m.input(1.5, 0)));
+    expect(value).toBe(27);
+    // step 1e-4: truncation 1e-8 of the slope, rounding 1e-16/1e-8 of the curvature
+    expect(slope[0] / 54).toBeCloseTo(1, 7);
+    expect((curvature?.[0] ?? Number.NaN) / 72).toBeCloseTo(1, 6);
+  });
+
   it('leaves second derivatives out unless they are asked for', () => {
     const m = dualNumbers(1);
     expect(m.sin(m.input(1, 0)).curvature).toBeNull();
