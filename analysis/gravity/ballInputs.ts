@@ -20,8 +20,8 @@ export type BallInput = 'dragShare' | 'addedMass' | 'densityKgpm3' | 'viscosityP
 const uBallRel = 0.005;
 /** A sphere in potential flow has 0.5; one that sheds its wake may carry a fifth more or less. */
 const addedMassHalfWidth = 0.1;
-/** Sutherland's law against measurements of air (US Standard Atmosphere 1976), with the temperature known to some degrees. */
-const uViscosityRel = 0.01;
+/** Sutherland's law against measurements of air (US Standard Atmosphere 1976), with the temperature known to five degrees. */
+const uViscosityRel = 0.015;
 
 /** What the fall of a ball in air depends on, each with its uncertainty, for a budget. */
 export function ballInputs(ball: StatedBall, air: Air): Record<BallInput, InputQuantity> {

@@ -3,7 +3,7 @@ import type { LocalGravity } from '../theory/normalGravity.ts';
 import { pitchEffect } from './pitchEffect.ts';
 
 /** One thing that alone would make the ball's g differ as it does. */
-export interface Explanation {
+interface Explanation {
   readonly cause: 'scale' | 'clock' | 'planeOffset' | 'pitch' | 'drag';
   /** By how much it would have to be off. */
   readonly size: number;

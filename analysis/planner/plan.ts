@@ -1,3 +1,4 @@
+import { commonRatesHz } from '../clock/commonRates.ts';
 import type { Finding } from '../sheet/result.ts';
 import type { Contribution } from '../uncertainty/effectiveDof.ts';
 import { expectedBudget, restS, shareInBandwidth } from './expectedBudget.ts';
@@ -50,11 +51,6 @@ export type Planned =
   | { readonly ok: true; readonly plan: Plan }
   | { readonly ok: false; readonly problem: string };
 
-/** Rates at which cameras record [Hz]. */
-const ratesHz = [
-  60, 100, 120, 200, 240, 250, 300, 400, 480, 500, 600, 800, 960, 1000, 1200, 1500, 2000, 2500, 3000, 4000,
-  5000, 6000, 8000, 10_000, 12_000, 15_000, 20_000, 30_000, 50_000, 100_000,
-];
 const codedBitsPerPx = 0.2;
 /** A record is to hold a filter's band ten times (SAE J211-1, sampling at least 10 × the class); four is the least. */
 const safeRatePerBandwidth = 10;
@@ -74,7 +70,10 @@ export function plan(order: PlanOrder): Planned {
   if (leastHz > rig.highestCaptureRateHz) return { ok: false, problem: tooSlow(order, rig, leastHz) };
 
   // Where the camera can, a peak is filmed with three frames in its half width and not with the two that it needs.
-  const permitted = [...ratesHz.filter((r) => r < rig.highestCaptureRateHz), rig.highestCaptureRateHz].filter(
+  const permitted = [
+    ...commonRatesHz.filter((r) => r < rig.highestCaptureRateHz),
+    rig.highestCaptureRateHz,
+  ].filter(
     (r) =>
       r >= Math.min((leastHz * safeFramesInHalfWidth) / leastFramesInHalfWidth, rig.highestCaptureRateHz),
   );

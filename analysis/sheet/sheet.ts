@@ -86,8 +86,11 @@ const site = z.union([
 
 const ambient = z.object({
   temperatureC: finite.min(-80).max(80).optional(),
+  uTemperatureC: notNegative.optional(),
   pressurePa: positive.optional(),
+  uPressurePa: notNegative.optional(),
   relativeHumidity: finite.min(0).max(1).optional(),
+  uRelativeHumidity: notNegative.optional(),
 });
 
 const body = z.object({
@@ -100,7 +103,9 @@ const body = z.object({
   /** Side of the square patch that is followed. */
   patchPx: finite.min(5).max(401).optional(),
   diameterM: positive.optional(),
+  uDiameterM: notNegative.optional(),
   massKg: positive.optional(),
+  uMassKg: notNegative.optional(),
   /** Drag coefficient referred to the circle of diameterM, for a body that is no smooth sphere; absent: the standard drag curve. */
   dragCoefficient: positive.optional(),
   uDragCoefficient: notNegative.optional(),

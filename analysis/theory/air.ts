@@ -1,4 +1,6 @@
 import type { Sheet } from '../sheet/sheet.ts';
+import type { InputQuantity } from '../uncertainty/measurement.ts';
+import { propagate } from '../uncertainty/propagate.ts';
 
 export interface Air {
   readonly densityKgpm3: number;
@@ -45,28 +47,49 @@ export function airViscosity(temperatureC: number): number {
   return (1.458e-6 * tK ** 1.5) / (tK + 110.4);
 }
 
+// Rooms: 20 °C ± 5 °C; pressure from weather and heights up to about 500 m; humidity hardly matters. Where a reading is stated
+// without an uncertainty, that of an ordinary instrument is taken: it is far below what the drag of a ball is known to.
+const unstated = {
+  temperatureC: { value: 20, u: 5 },
+  pressurePa: { value: 101_325, u: 3000 },
+  relativeHumidity: { value: 0.5, u: 0.3 },
+} as const;
+const uOfInstrument = { temperatureC: 0.5, pressurePa: 100, relativeHumidity: 0.05 } as const;
+/** Of the equation itself: Picard et al. 2008, section 3. */
+const uEquationRel = 2.2e-5;
+
 /** Air at the rig; what is not stated is taken as an ordinary room's and made uncertain accordingly. */
 export function airOf(ambient: Sheet['ambient']): Air {
-  const assumed: string[] = [];
-  // Rooms: 20 °C ± 5 °C; pressure from weather and heights up to about 500 m; humidity hardly matters.
-  let variance = 0.001 ** 2;
-  if (ambient?.temperatureC === undefined) {
-    assumed.push('20 °C (ambient.temperatureC)');
-    variance += (5 / 293.15) ** 2;
-  }
-  if (ambient?.pressurePa === undefined) {
-    assumed.push('101 325 Pa (ambient.pressurePa)');
-    variance += 0.03 ** 2;
-  }
-  if (ambient?.relativeHumidity === undefined) {
-    assumed.push('half saturated (ambient.relativeHumidity)');
-    variance += 0.003 ** 2;
-  }
-  const temperatureC = ambient?.temperatureC ?? 20;
-  return {
-    densityKgpm3: airDensity(temperatureC, ambient?.pressurePa ?? 101_325, ambient?.relativeHumidity ?? 0.5),
-    uDensityRel: Math.sqrt(variance),
-    viscosityPas: airViscosity(temperatureC),
-    assumed,
+  const input = (name: keyof typeof unstated, source: string, stated?: number, u?: number): InputQuantity =>
+    stated === undefined
+      ? { source, ...unstated[name] }
+      : { source, value: stated, u: u ?? uOfInstrument[name] };
+  const { temperatureC, pressurePa, relativeHumidity } = ambient ?? {};
+  const inputs = {
+    t: input('temperatureC', 'temperature', temperatureC, ambient?.uTemperatureC),
+    p: input('pressurePa', 'pressure', pressurePa, ambient?.uPressurePa),
+    h: input('relativeHumidity', 'humidity', relativeHumidity, ambient?.uRelativeHumidity),
+    equation: { source: 'equation of the density', value: 1, u: uEquationRel },
   };
+  const [t, p, h] = [inputs.t.value, inputs.p.value, inputs.h.value];
+  const density = airDensity(t, p, h);
+  const { u } = propagate({
+    inputs,
+    outputs: (m, x) => {
+      // The equation is for plain numbers: changes by each of its three arguments are added.
+      const byEach = m.add(
+        m.through((c) => airDensity(c, p, h), x.t),
+        m.through((c) => airDensity(t, c, h), x.p),
+        m.through((c) => airDensity(t, p, c), x.h),
+        -2 * density,
+      );
+      return { density: m.multiply(byEach, x.equation) };
+    },
+  }).outputs.density;
+  const assumed = [
+    ...(temperatureC === undefined ? ['20 °C (ambient.temperatureC)'] : []),
+    ...(pressurePa === undefined ? ['101 325 Pa (ambient.pressurePa)'] : []),
+    ...(relativeHumidity === undefined ? ['half saturated (ambient.relativeHumidity)'] : []),
+  ];
+  return { densityKgpm3: density, uDensityRel: u / density, viscosityPas: airViscosity(t), assumed };
 }

@@ -1,7 +1,7 @@
 import type { Arithmetic, Operand } from './arithmetic.ts';
 
 /** A number that carries its partial derivatives by n inputs. */
-export interface Dual {
+interface Dual {
   readonly value: number;
   /** First derivatives, one for each input. */
   readonly slope: Float64Array;

@@ -18,7 +18,7 @@ export interface InputQuantity {
 }
 
 /** Correlation coefficient of two inputs. */
-export interface InputCorrelation<Input extends string> {
+interface InputCorrelation<Input extends string> {
   readonly between: readonly [Input, Input];
   readonly r: number;
 }
@@ -32,9 +32,7 @@ export interface Measurement<Input extends string, Output extends string> {
 }
 
 /** Names of the inputs, in the order they were stated. */
-export function inputNames<Input extends string>(
-  inputs: Readonly<Record<Input, InputQuantity>>,
-): readonly Input[] {
+function inputNames<Input extends string>(inputs: Readonly<Record<Input, InputQuantity>>): readonly Input[] {
   return Object.keys(inputs) as Input[];
 }
 

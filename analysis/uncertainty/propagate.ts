@@ -3,7 +3,7 @@ import { type Contribution, type ContributionCorrelation, combined } from './eff
 import { inputCovariance, type Measurement } from './measurement.ts';
 
 /** One output of a measurement with what its inputs contribute. */
-export interface Propagated {
+interface Propagated {
   readonly value: number;
   /** Combined standard uncertainty. */
   readonly u: number;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { airDensity, airViscosity } from '../../analysis/theory/air.ts';
+import { airDensity, airOf, airViscosity } from '../../analysis/theory/air.ts';
 import { publishedRows } from './publishedRows.ts';
 
 const rows = publishedRows('air.csv').map((r) => ({
@@ -30,5 +30,19 @@ describe('air', () => {
   it('has the viscosity that the US Standard Atmosphere prints for sea level', () => {
     // 1.7894e-5 Pa s at 15 °C (from memory)
     expect(airViscosity(15) * 1e5).toBeCloseTo(1.7894, 4);
+  });
+
+  // Relative sensitivities near 20 °C, 100 kPa, 50 %: Picard et al. 2008, from memory as there rounded: 1e-5 per Pa, -4e-3 per K,
+  // -9e-3 per unit of humidity.
+  it.each([
+    ['uPressurePa', 100, 1e-5],
+    ['uTemperatureC', 0.1, 4e-3],
+    ['uRelativeHumidity', 0.02, 9e-3],
+  ])('is uncertain by what %s = %f makes of it', (field, u, perUnit) => {
+    const known = { uPressurePa: 0, uTemperatureC: 0, uRelativeHumidity: 0 };
+    const stated = { temperatureC: 20, pressurePa: 100_000, relativeHumidity: 0.5, ...known, [field]: u };
+    const { uDensityRel } = airOf(stated);
+    // one digit is printed: half a unit of it; the equation's own 2.2e-5 is far below
+    expect(Math.abs(uDensityRel / u - perUnit)).toBeLessThan(0.5 * 10 ** Math.floor(Math.log10(perUnit)));
   });
 });
