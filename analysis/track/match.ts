@@ -6,6 +6,7 @@ import {
   fillEquations,
   fillFree,
   fitGainAndOffset,
+  leaveOutForeign,
   likeness,
   UNKNOWNS,
 } from './normalEquations.ts';
@@ -87,14 +88,14 @@ export interface Matcher {
 
 /** Residuals beyond this many standard deviations lose weight (Huber). 2.5 costs 1 % of precision on Gaussian noise. */
 const huberAt = 2.5;
-/** Beyond this a pixel shows something else (a tether that crosses) and counts for nothing, once the match is near. */
-const rejectAt = 6;
-const nearPx = 0.3;
+/** Beyond this a pixel shows something else (a tether that crosses), which can be told once the match is near. */
+const foreignAt = 6;
+const nearPx = 0.05;
 const mostSteps = 12;
 /** The next step would be shorter than this, or than this share of the place's standard uncertainty. */
 const settledPx = 2e-4;
 const settledShare = 0.05;
-/** Weights at the edge of rejection can flip for ever; steps this small no longer matter beside the noise. */
+/** Weights can flip for ever; steps this small no longer matter beside the noise. */
 const goodEnoughPx = 0.005;
 const leastInside = 0.6;
 /** Standard deviation of a body's gain about 1, where the pixels do not say better. */
@@ -115,6 +116,7 @@ export function makeMatcher(half: number): Matcher {
   const behindX = new Float64Array(side * side);
   const behindY = new Float64Array(side * side);
   const free = new Float64Array(side * side);
+  const foreign = new Uint8Array(side * side);
   let masked: Masked | null = null;
 
   return {
@@ -130,6 +132,7 @@ export function makeMatcher(half: number): Matcher {
         behindY,
         free,
         mask,
+        foreign,
         appearance: a,
         coverage: c,
         side,
@@ -142,6 +145,7 @@ export function makeMatcher(half: number): Matcher {
       let box = masked.box;
       let noise = sigma;
       let lengthPx = Number.POSITIVE_INFINITY;
+      let cleared = false;
       if (!coverage) {
         c.value.fill(1);
         c.slopeX.fill(0);
@@ -152,6 +156,7 @@ export function makeMatcher(half: number): Matcher {
         const wholeX = Math.round(x);
         const wholeY = Math.round(y);
         if (wholeX - half !== left || wholeY - half !== top) {
+          cleared = false;
           left = wholeX - half;
           top = wholeY - half;
           box = insideOf(masked.box, left, top, picture);
@@ -163,9 +168,12 @@ export function makeMatcher(half: number): Matcher {
         if (coverage) sampler.sample(coverage, dx, dy, c, box);
         fillFree(fitting, model.spreadPx2);
         if (steps === 1 && !fitGainAndOffset(fitting, level)) return null;
-        const rejecting = lengthPx < nearPx;
-        const robustness = { huber: huberAt * noise, reject: rejectAt * noise, rejecting };
-        fillEquations(fitting, level, robustness, null, equations);
+        fillEquations(fitting, level, huberAt * noise, null, equations);
+        if (!cleared && lengthPx < nearPx) {
+          cleared = true;
+          if (leaveOutForeign(fitting, level, foreignAt * noise))
+            fillEquations(fitting, level, huberAt * noise, null, equations);
+        }
 
         const { matrix, right, sumW, sumMask } = equations;
         const inside = sumMask / masked.weight;
@@ -197,8 +205,7 @@ export function makeMatcher(half: number): Matcher {
         // Steps shrink by about the same factor each time: the next one would be this long.
         const nextPx = beforePx === Number.POSITIVE_INFINITY ? lengthPx : lengthPx * (lengthPx / beforePx);
         const enoughPx = Math.max(settledPx, settledShare * Math.sqrt(variance * inverse[0]));
-        const weightsStand = rejecting || equations.outliers === 0;
-        const converged = weightsStand && lengthPx < beforePx && nextPx < enoughPx;
+        const converged = cleared && lengthPx < beforePx && nextPx < enoughPx;
         if (converged || steps === mostSteps) {
           const remaining = Math.max(equations.sumWR2 - gained, 0) / Math.max(sumW - 4, 1);
           const { score, spreadPull, spreadWeight } = likeness(fitting, level);

@@ -21,8 +21,6 @@ export interface NormalEquations {
   sumW: number;
   sumMask: number;
   sumWR2: number;
-  /** Pixels beyond the limit of rejection. */
-  outliers: number;
 }
 
 /** The window's pixels that count, as the frame shows them, and the model there. */
@@ -39,19 +37,12 @@ export interface Fitting {
   /** What the plate adds to the model: (1 - α)·B - s·∇α·∇B. */
   readonly free: Float64Array;
   readonly mask: Float64Array;
+  /** Room to mark pixels in. */
+  readonly foreign: Uint8Array;
   /** Appearance and coverage of the model. */
   readonly appearance: Sampled;
   readonly coverage: Sampled;
   readonly side: number;
-}
-
-/** What the weights go by: residuals in the frame, at these sizes [grey levels]. */
-export interface Robustness {
-  /** Beyond this the weight falls as 1/|r| (Huber). */
-  readonly huber: number;
-  /** Beyond this a pixel shows something else: counted, and left out if `rejecting`. */
-  readonly reject: number;
-  readonly rejecting: boolean;
 }
 
 /** Least-squares sums of frame ≈ g·A + o·α + (1 - α)·γB. */
@@ -103,6 +94,34 @@ export function fitGainAndOffset(
   return true;
 }
 
+/**
+ * Leaves out pixels that show something else than body and plate, and their neighbours, into which the optics smear it.
+ *
+ * @param limit  residual beyond which a pixel is foreign [grey levels]
+ * @returns whether there were any
+ */
+export function leaveOutForeign(fitting: Fitting, { gain, offset }: GainAndOffset, limit: number): boolean {
+  const { pixel, seen, free, appearance, coverage, foreign, side } = fitting;
+  const { count } = fitting;
+  let any = false;
+  for (let k = 0; k < count; k++) {
+    const u = pixel[k];
+    const r = seen[u] - (gain * appearance.value[u] + offset * coverage.value[u] + free[u]);
+    if (r <= limit && r >= -limit) continue;
+    if (!any) foreign.fill(0);
+    any = true;
+    const column = u % side;
+    for (let j = u - side; j <= u + side; j += side) {
+      for (let i = j - (column > 0 ? 1 : 0); i <= j + (column < side - 1 ? 1 : 0); i++) foreign[i] = 1;
+    }
+  }
+  if (!any) return false;
+  let kept = 0;
+  for (let k = 0; k < count; k++) if (foreign[pixel[k]] === 0) pixel[kept++] = pixel[k];
+  fitting.count = kept;
+  return true;
+}
+
 export function emptyEquations(): NormalEquations {
   return {
     matrix: new Float64Array(UNKNOWNS * UNKNOWNS),
@@ -110,7 +129,6 @@ export function emptyEquations(): NormalEquations {
     sumW: 0,
     sumMask: 0,
     sumWR2: 0,
-    outliers: 0,
   };
 }
 
@@ -118,12 +136,13 @@ export function emptyEquations(): NormalEquations {
  * Sums up the equations over the pixels that count. Sums are kept in locals, and the turn's only when it is asked for: this is
  * the innermost loop of tracking.
  *
+ * @param huber       residuals beyond this lose weight as 1/|r| [grey levels]
  * @param turnsAbout  the body's zero in the window's columns and rows, where its turn is an unknown too
  */
 export function fillEquations(
   { pixel, count, seen, behind, free, mask, appearance, coverage, side }: Fitting,
   { gain, offset }: GainAndOffset,
-  { huber, reject, rejecting }: Robustness,
+  huber: number,
   turnsAbout: { readonly x: number; readonly y: number } | null,
   into: NormalEquations,
 ): void {
@@ -156,7 +175,6 @@ export function fillEquations(
   let sumW = 0;
   let sumMask = 0;
   let sumWR2 = 0;
-  let outliers = 0;
   for (let k = 0; k < count; k++) {
     const u = pixel[k];
     const m = mask[u];
@@ -164,14 +182,7 @@ export function fillEquations(
     const cv = c[u];
     const r = seen[u] - (gain * av + offset * cv + free[u]);
     const size = r < 0 ? -r : r;
-    let w = m;
-    if (size > huber) {
-      w = (m * huber) / size;
-      if (size > reject) {
-        outliers++;
-        if (rejecting) w = 0;
-      }
-    }
+    const w = size > huber ? (m * huber) / size : m;
     const lift = offset - behind[u];
     const jx = -(gain * ax[u] + lift * cx[u]);
     const jy = -(gain * ay[u] + lift * cy[u]);
@@ -232,7 +243,6 @@ export function fillEquations(
   into.sumW = sumW;
   into.sumMask = sumMask;
   into.sumWR2 = sumWR2;
-  into.outliers = outliers;
 }
 
 /** How like the frame the model is, and what the residual says of its spread. */
