@@ -1,7 +1,8 @@
 import type { BodyState } from '../sheet/result.ts';
 import { blurModel } from './blur.ts';
+import { type BodyView, withoutCovered } from './bodyView.ts';
 import { startCuttings } from './cuttings.ts';
-import { makeLayer } from './layer.ts';
+import { makeLayer, makeSampler, sampledFor } from './layer.ts';
 import type { StillBody } from './learnBody.ts';
 import { startLearner } from './learner.ts';
 import { lookAgain } from './lookAgain.ts';
@@ -41,10 +42,28 @@ export interface Follower {
    * Frames must come one after the other, from the frame in which the body was placed; backwards is as good as forwards.
    *
    * @param plateNow  the plate as the camera sees it in this frame, where it is not that of the surroundings
+   * @param inFront   other bodies that cover a part of this one
    */
-  push(n: number, picture: Picture, plateNow?: Plate): void;
+  push(n: number, picture: Picture, plateNow?: Plate, inFront?: readonly BodyView[]): void;
+  /** Where the body's zero should be in a frame to come; null where nothing can be said. */
+  expected(n: number): Expected | null;
+  /** Where it was found in the frame pushed last, if it was in frame n. */
+  foundIn(n: number): PlaceOfZero | null;
+  /** The body as it would look there. */
+  viewAt(at: PlaceOfZero): BodyView;
   /** Everything that was seen, in the order of the frames pushed: the best that is known after the last frame. */
   finish(): Sighting[];
+}
+
+interface PlaceOfZero {
+  readonly xPx: number;
+  readonly yPx: number;
+}
+
+export interface Expected extends PlaceOfZero {
+  /** The body may be this far from there: 0 when it was seen just now. */
+  readonly reachPx: number;
+  readonly half: number;
 }
 
 /** Places of which the next frame is predicted: the acceleration of a tip changes too fast for more. */
@@ -93,6 +112,7 @@ export function startFollower(
 ): Follower {
   const { half, centreX, centreY, noise } = still;
   const matcher = makeMatcher(half);
+  const sampler = makeSampler(half);
   const markX = body.xPx - centreX;
   const markY = body.yPx - centreY;
   const learner = plate ? startLearner(still, plate) : null;
@@ -130,13 +150,19 @@ export function startFollower(
   const sightings: Sighting[] = [];
   const cuttings = startCuttings(half);
 
-  /** The best acceptable match near where the body is expected. */
-  const look = (picture: Picture, n: number, behind: Plate | null, brightness: number): Match | null => {
+  const predicted = (n: number) => {
     const gap = Math.abs(n - frames[frames.length - 1]);
     const last = gap === 1 ? -nextFrom : -acrossGapFrom;
-    const px = predict(frames.slice(last), xs.slice(last), n);
-    const py = predict(frames.slice(last), ys.slice(last), n);
-    const speedPx = Math.hypot(px.rate, py.rate);
+    const x = predict(frames.slice(last), xs.slice(last), n);
+    const y = predict(frames.slice(last), ys.slice(last), n);
+    // A body can change its speed by as much as it has (a tether that comes straight), or by a few pixels from rest.
+    const radiusPx = Math.min(6 + 1.5 * Math.hypot(x.rate, y.rate) + 3 * gap, 150);
+    return { x, y, gap, radiusPx };
+  };
+
+  /** The best acceptable match near where the body is expected. */
+  const look = (picture: Picture, n: number, behind: Plate | null, brightness: number): Match | null => {
+    const { x: px, y: py, gap, radiusPx } = predicted(n);
     const blurred = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
     const near = matcher.match(picture, blurred, px.value, py.value, noise, behind, brightness);
     const offPx = near ? Math.hypot(near.xPx - px.value, near.yPx - py.value) : Number.POSITIVE_INFINITY;
@@ -146,8 +172,6 @@ export function startFollower(
     // A body that must have left the picture is not looked for in it.
     if (px.value < 0 || py.value < 0 || px.value > picture.widthPx - 1 || py.value > picture.heightPx - 1)
       return null;
-    // A body can change its speed by as much as it has (a tether that comes straight), or by a few pixels from rest.
-    const radiusPx = Math.min(6 + 1.5 * speedPx + 3 * gap, 150);
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
     const wide = seen ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, behind, brightness) : null;
     const acceptable = (m: Match | null): m is Match =>
@@ -169,8 +193,15 @@ export function startFollower(
   };
 
   /** Where the body is in the next frame. */
-  const follow = (n: number, picture: Picture, behind: Plate | null): Sighting => {
-    const brightness = behind ? brightnessOf(picture, behind) : 1;
+  const follow = (
+    n: number,
+    picture: Picture,
+    plateNow: Plate | null,
+    inFront: readonly BodyView[],
+  ): Sighting => {
+    const brightness = plateNow ? brightnessOf(picture, plateNow) : 1;
+    const covered = inFront.length > 0;
+    const behind = covered ? withoutCovered(picture, plateNow, inFront) : plateNow;
     const mark = body.marks.find((m) => m.frame === n);
     if (mark) {
       // The track is split here: what was seen before says nothing about what comes after but the speed.
@@ -206,6 +237,7 @@ export function startFollower(
     learner?.weigh(found);
     cuttings.keep(n, picture, behind, brightness, found.xPx, found.yPx);
     const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
+    if (covered) return sighting(n, 'measured', found);
     turning ||= sightings.length > still.frames && turns(picture, found, behind, brightness);
     if (learner && behind && turning) {
       if (found.score > leastScore) learner.refresh(picture, behind, brightness, found.xPx, found.yPx);
@@ -217,8 +249,32 @@ export function startFollower(
   };
 
   return {
-    push(n, picture, plateNow) {
-      sightings.push(follow(n, picture, usedPlate && (plateNow ?? usedPlate)));
+    push(n, picture, plateNow, inFront = []) {
+      sightings.push(follow(n, picture, usedPlate && (plateNow ?? usedPlate), inFront));
+    },
+    expected(n) {
+      if (lost || frames.length === 0 || body.marks.some((m) => m.frame === n)) return null;
+      const { x, y, gap, radiusPx } = predicted(n);
+      return { xPx: x.value, yPx: y.value, reachPx: gap === 1 ? 0 : radiusPx, half };
+    },
+    foundIn(n) {
+      const at = frames.length - 1;
+      return frames[at] === n ? { xPx: xs[at], yPx: ys[at] } : null;
+    },
+    viewAt({ xPx, yPx }) {
+      const [wholeX, wholeY] = [Math.round(xPx), Math.round(yPx)];
+      const appearance = sampledFor(half);
+      const coverage = sampledFor(half);
+      sampler.sample(model.appearance, xPx - wholeX, yPx - wholeY, appearance);
+      if (model.coverage) sampler.sample(model.coverage, xPx - wholeX, yPx - wholeY, coverage);
+      return {
+        half,
+        noise,
+        left: wholeX - half,
+        top: wholeY - half,
+        appearance: appearance.value,
+        coverage: model.coverage ? coverage.value : model.mask,
+      };
     },
     finish() {
       return lookAgain(sightings, {

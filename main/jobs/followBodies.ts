@@ -5,6 +5,7 @@ import { bridgeGaps } from '../../analysis/track/bridge.ts';
 import { calibrateUncertainty } from '../../analysis/track/calibrateUncertainty.ts';
 import { type Camera, judgeCamera, registered, shakenPlate } from '../../analysis/track/camera.ts';
 import type { CameraShift } from '../../analysis/track/cameraShift.ts';
+import { startCrossings } from '../../analysis/track/crossings.ts';
 import { doubledFrames, withoutFrames } from '../../analysis/track/doubledFrames.ts';
 import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
 import type { Plate } from '../../analysis/track/match.ts';
@@ -114,11 +115,13 @@ export async function followBodies(
     });
   }
 
+  const crossings = startCrossings();
   const trackPace = startPace('track', report);
   const frames = lastFrame - firstFrame + 1;
   for await (const { n, picture } of source.frames(firstFrame, lastFrame, signal)) {
     const plateNow = plateIn(n, picture);
-    for (const run of runs) if (n >= run.placed.frame) run.follower?.push(n, picture, plateNow);
+    const placed = runs.flatMap((run) => (run.follower && n >= run.placed.frame ? [run.follower] : []));
+    crossings.push(placed, n, picture, plateNow);
     trackPace.frameDone(n - firstFrame + 1, frames);
   }
   for (const run of runs) {

@@ -44,6 +44,8 @@ describe('bodies', () => {
     ['quadrant', 'bullseye'],
     ['bullseye', 'ball'],
     ['ball', 'bullseye'],
+    ['bullseye', 'bullseye'],
+    ['quadrant', 'quadrant'],
   ])('a %s and a %s that cross never swap', async (behind, inFront) => {
     const { frames, truths } = crossing(behind, inFront);
     const tracks = await follow(
