@@ -1,3 +1,5 @@
+import { adaptive } from '../motion/adaptive.ts';
+import type { Break } from '../motion/breaks.ts';
 import { motionOf } from '../motion/motionOf.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
 import type { Finding, KeyValue, Motion, Theory } from '../sheet/result.ts';
@@ -27,11 +29,13 @@ export function numbers(input: NumbersInput): Numbers {
   const motions = new Map(
     usable.map((t) => {
       const release = releases.get(t.bodyId);
-      const breaks = [
-        ...(release ? [release.timeS] : []),
-        ...(t.role === 'tip' && extension ? [extension.timeS] : []),
+      const breaks: Break[] = [
+        ...(release ? [{ kind: 'release' as const, timeS: release.timeS, uTimeS: release.uTimeS }] : []),
+        ...(t.role === 'tip' && extension
+          ? [{ kind: 'extension' as const, timeS: extension.timeS, uTimeS: extension.uTimeS }]
+          : []),
       ];
-      return [t.bodyId, motionOf(t, breaks, common.frameTimeS)];
+      return [t.bodyId, motionOf(t, breaks, common.frameTimeS, adaptive)];
     }),
   );
 

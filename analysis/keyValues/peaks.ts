@@ -1,4 +1,4 @@
-import type { MotionWithWindows } from '../motion/motionOf.ts';
+import type { BodyMotion } from '../motion/bodyMotion.ts';
 import type { Common } from '../motion/worldTrack.ts';
 import type { Finding, KeyValue } from '../sheet/result.ts';
 import { measured } from '../uncertainty/measured.ts';
@@ -16,7 +16,7 @@ export interface Peaks {
  * @param toS  extension, or the last frame where it was not seen
  */
 export function peaksOf(
-  { motion, bandwidthHz, halfWindowS }: MotionWithWindows,
+  { motion, bandwidthHz }: BodyMotion,
   fromS: number,
   toS: number,
   common: Common,
@@ -72,7 +72,7 @@ export function peaksOf(
 
   const findings: Finding[] = [];
   const last = inside[inside.length - 1];
-  const windowFrames = halfWindowS[a] / common.frameTimeS;
+  const windowFrames = 0.5 / (bandwidthHz[a] * common.frameTimeS);
   if (a >= last - windowFrames) {
     findings.push({
       level: 'caution',

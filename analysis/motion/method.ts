@@ -7,8 +7,17 @@ export interface Piece {
   readonly valueM: Float64Array;
   /** Stated standard uncertainty of each position, frame by frame [m]. */
   readonly uM: Float64Array;
-  /** The instant before the piece at which the body was still at rest, if it starts there. */
-  readonly restUntil: { readonly timeS: number; readonly uTimeS: number } | null;
+  /** The instant before the piece at which the body was still at rest, if it starts there, and the place where it was. */
+  readonly restUntil: Rest | null;
+  /** The body hangs at rest all along: the piece before release. */
+  readonly atRest?: boolean;
+}
+
+export interface Rest {
+  readonly timeS: number;
+  readonly uTimeS: number;
+  readonly valueM: number;
+  readonly uValueM: number;
 }
 
 /** Values and standard uncertainties at the piece's times; NaN where the method has none. */
@@ -29,4 +38,12 @@ export interface Smoothed {
   readonly bandwidthHz: Float64Array;
   /** How it was done, for the record: windows, cut-off, chosen by what. */
   readonly settings: Readonly<Record<string, unknown>>;
+}
+
+/** A way to turn positions into velocity and acceleration: the default, or one that a procedure prescribes. */
+export interface MotionMethod {
+  /** In words, for the record. */
+  readonly name: string;
+  /** Throws RangeError when the piece has no points or its times do not increase. */
+  smooth(piece: Piece): Smoothed;
 }

@@ -1,56 +1,62 @@
-import type { Motion } from '../sheet/result.ts';
-import { type AdaptiveDerivatives, adaptiveDerivatives, type Estimate } from './adaptiveDerivatives.ts';
-import { accelerationBandwidth } from './bandwidth.ts';
-import type { Segment } from './localPolynomial.ts';
-import { inflation } from './residuals.ts';
+import type { BodyMotion } from './bodyMotion.ts';
+import type { Break } from './breaks.ts';
+import type { MotionMethod, Piece, Smoothed } from './method.ts';
+import { restBefore } from './restBefore.ts';
 import type { WorldTrack } from './worldTrack.ts';
 
-/** Motion with the windows it was worked out with, point by point. */
-export interface MotionWithWindows {
-  readonly motion: Motion;
-  readonly halfWindowS: Float64Array;
-  /** Bandwidth of the acceleration at each point [Hz]. */
-  readonly bandwidthHz: Float64Array;
+/** A range of indices of a track, to exclusive. */
+export interface Range {
+  readonly from: number;
+  readonly to: number;
 }
 
-/** Parts a record at its breaks (release, extension): no window crosses a kink. */
-export function segmentsOf(timeS: Float64Array, breaksS: readonly number[]): Segment[] {
+/** Parts a record at its breaks (release, extension): no smoothing crosses a kink. */
+export function piecesOf(timeS: Float64Array, breaksS: readonly number[]): Range[] {
   const edges = [...breaksS].sort((a, b) => a - b).map((b) => timeS.findIndex((t) => t >= b));
   const starts = [0, ...edges.filter((e) => e > 0), timeS.length];
   return starts.slice(1).flatMap((to, i) => (to > starts[i] ? [{ from: starts[i], to }] : []));
 }
 
 /**
- * Position, velocity and acceleration of a body against time, each with its standard uncertainty: noise of the positions,
- * widened where the residuals scatter or hang together more than stated, and the estimated bias of smoothing.
+ * Position, velocity and acceleration of a body against time, each with its standard uncertainty. The record is parted at its
+ * breaks; before release the body rests, and the piece after it starts from rest there.
  *
  * Only what varies from frame to frame is in these uncertainties; scale and clock are common to all points and are in the
  * budgets of the key values.
- *
- * @param breaksS  times that no window may cross [s]
  */
 export function motionOf(
   track: WorldTrack,
-  breaksS: readonly number[],
+  breaks: readonly Break[],
   frameTimeS: number,
-): MotionWithWindows {
+  method: MotionMethod,
+): BodyMotion {
   const n = track.timeS.length;
   const blank = () => new Float64Array(n).fill(Number.NaN);
   const series = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
   const u = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
-  const halfWindowS = blank();
   const bandwidthHz = blank();
-  const bandwidthFor = rememberedBandwidth(frameTimeS);
+  const settings: { fromS: number; toS: number; x: unknown; y: unknown }[] = [];
+  const release = breaks.find((b) => b.kind === 'release');
 
-  for (const segment of segmentsOf(track.timeS, breaksS)) {
-    const down = adaptiveDerivatives(track.timeS, track.yM, track.uYM, segment);
-    const across = adaptiveDerivatives(track.timeS, track.xM, track.uXM, segment);
-    take(segment, down, track.yM, track.uYM, [series.y, series.vy, series.ay], [u.y, u.vy, u.ay]);
-    take(segment, across, track.xM, track.uXM, [series.x, series.vx, series.ax], [u.x, u.vx, u.ax]);
-    for (let i = segment.from; i < segment.to; i++) {
-      halfWindowS[i] = down.acceleration.halfWindowS[i];
-      bandwidthHz[i] = bandwidthFor(halfWindowS[i], down.acceleration.degree[i]);
-    }
+  for (const range of piecesOf(
+    track.timeS,
+    breaks.map((b) => b.timeS),
+  )) {
+    const down = method.smooth(pieceOf(track.timeS, track.yM, track.uYM, range, release));
+    const across = method.smooth(pieceOf(track.timeS, track.xM, track.uXM, range, release));
+    take(range, down, [series.y, series.vy, series.ay], [u.y, u.vy, u.ay]);
+    take(range, across, [series.x, series.vx, series.ax], [u.x, u.vx, u.ax]);
+    // What no frame rate can show is not within the bandwidth.
+    bandwidthHz.set(
+      down.bandwidthHz.map((hz) => Math.min(hz, 0.5 / frameTimeS)),
+      range.from,
+    );
+    settings.push({
+      fromS: track.timeS[range.from],
+      toS: track.timeS[range.to - 1],
+      x: across.settings,
+      y: down.settings,
+    });
   }
 
   const known = Array.from(track.timeS.keys()).filter(
@@ -74,52 +80,46 @@ export function motionOf(
       uAyMps2: pick(u.ay),
       measuredXM: pick(track.xM),
       measuredYM: pick(track.yM),
-      method:
-        'local polynomial of degree 2 or 4; degree and half-window chosen at each instant, for each of position, velocity and acceleration, for the least estimated error',
+      method: method.name,
       settings: {
         /** Of the acceleration along the plumb line. */
-        halfWindowS: pick(halfWindowS),
         bandwidthHz: pick(bandwidthHz),
-        breaksS: [...breaksS],
+        breaksS: breaks.map((b) => b.timeS),
+        pieces: settings,
       },
     },
-    halfWindowS: Float64Array.from(pick(halfWindowS)),
     bandwidthHz: Float64Array.from(pick(bandwidthHz)),
   };
 }
 
-/** The bandwidth of each window is worked out once; never more than half the frame rate. */
-function rememberedBandwidth(frameTimeS: number): (halfWindowS: number, degree: number) => number {
-  const known = new Map<string, number>();
-  return (halfWindowS, degree) => {
-    if (Number.isNaN(halfWindowS)) return Number.NaN;
-    const key = `${halfWindowS} ${degree}`;
-    const hz =
-      known.get(key) ?? Math.min(accelerationBandwidth(halfWindowS, frameTimeS, degree), 0.5 / frameTimeS);
-    known.set(key, hz);
-    return hz;
+function pieceOf(
+  timeS: Float64Array,
+  valueM: Float64Array,
+  uM: Float64Array,
+  { from, to }: Range,
+  release: Break | undefined,
+): Piece {
+  const atRest = release !== undefined && timeS[to - 1] < release.timeS;
+  const startsThere = release !== undefined && from > 0 && timeS[from - 1] < release.timeS && !atRest;
+  return {
+    timeS: timeS.slice(from, to),
+    valueM: valueM.slice(from, to),
+    uM: uM.slice(from, to),
+    restUntil: startsThere
+      ? restBefore(valueM.subarray(0, from), uM.subarray(0, from), release.timeS, release.uTimeS)
+      : null,
+    ...(atRest ? { atRest } : {}),
   };
 }
 
 function take(
-  segment: Segment,
-  d: AdaptiveDerivatives,
-  measured: Float64Array,
-  uMeasured: Float64Array,
+  range: Range,
+  { position, velocity, acceleration }: Smoothed,
   values: readonly [Float64Array, Float64Array, Float64Array],
   us: readonly [Float64Array, Float64Array, Float64Array],
 ): void {
-  const standardised = new Float64Array(measured.length).fill(Number.NaN);
-  for (let i = segment.from; i < segment.to; i++) {
-    if (d.leverage[i] < 0.9) {
-      standardised[i] = (measured[i] - d.position.value[i]) / (uMeasured[i] * Math.sqrt(1 - d.leverage[i]));
-    }
-  }
-  const wider = inflation(standardised, segment.from, segment.to);
-  [d.position, d.velocity, d.acceleration].forEach((estimate: Estimate, q) => {
-    for (let i = segment.from; i < segment.to; i++) {
-      values[q][i] = estimate.value[i];
-      us[q][i] = Math.hypot(wider * estimate.uNoise[i], estimate.uBias[i]);
-    }
+  [position, velocity, acceleration].forEach((curve, q) => {
+    values[q].set(curve.value, range.from);
+    us[q].set(curve.u, range.from);
   });
 }
