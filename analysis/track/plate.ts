@@ -14,9 +14,6 @@ export interface RestPlace {
 
 /** With fewer frames than this a median may still show a body. */
 const leastFrames = 7;
-/** Above this correlation with the frame that shows it, the body is taken to be still at its place. */
-const stillThere = 0.6;
-
 /** Side of the blocks in which frames about a rest place are held against each other [px]. */
 const blockPx = 8;
 /** Frames differ by no more than this factor on what two frames of the same differ by: 64 pixels tell that to 9 %. */
@@ -24,7 +21,7 @@ const mostApart = 1.4;
 
 /**
  * The still background: at each pixel the mean of the middle half of the sampled frames' grey levels, so that a body that
- * passes does not count. Around a rest place only frames count in which the body has left it.
+ * passes does not count. Around a rest place, block by block, only the frames count that show the same, and not the body.
  *
  * @returns null when there are too few frames for it
  * Cost O(pixels · frames²) for few frames (insertion sort), 31 frames: about 0.4 µs a pixel.
@@ -37,14 +34,15 @@ export function plateOf(frames: readonly SampledFrame[], rests: readonly RestPla
   const values = new Float64Array(frames.length);
   for (let i = 0; i < level.length; i++) level[i] = middleMean(lumas, i, values);
 
+  const lit = frames.map(({ picture }) => ({
+    luma: picture.luma,
+    brightness: brightnessOf(picture, { level }),
+  }));
   for (const rest of rests) {
-    const left = frames
-      .filter((f) => likeness(f.picture, rest) < stillThere)
-      .map(({ picture }) => ({ luma: picture.luma, brightness: brightnessOf(picture, { level }) }));
-    if (left.length < leastFrames || left.length === lumas.length) continue;
     const r = Math.ceil(rest.radiusPx);
     const [cx, cy] = [Math.round(rest.xPx), Math.round(rest.yPx)];
     const [toX, toY] = [Math.min(widthPx - 1, cx + r), Math.min(heightPx - 1, cy + r)];
+    const atRest = { luma: rest.picture.luma, brightness: brightnessOf(rest.picture, { level }) };
     for (let y = Math.max(0, cy - r); y <= toY; y += blockPx) {
       for (let x = Math.max(0, cx - r); x <= toX; x += blockPx) {
         const block = {
@@ -53,8 +51,10 @@ export function plateOf(frames: readonly SampledFrame[], rests: readonly RestPla
           toX: Math.min(toX, x + blockPx - 1),
           toY: Math.min(toY, y + blockPx - 1),
         };
-        const alike = agreeing(left, block, widthPx);
-        const used = alike.length < leastFrames ? left.map((f) => f.luma) : alike;
+        const awayPx = Math.hypot((block.fromX + block.toX) / 2 - cx, (block.fromY + block.toY) / 2 - cy);
+        const shown = awayPx <= r / 2 + blockPx / 2 ? atRest : null;
+        const used = agreeing(lit, shown, block, widthPx);
+        if (used.length < leastFrames) continue;
         for (let j = y; j <= block.toY; j++) {
           for (let i = x; i <= block.toX; i++)
             level[j * widthPx + i] = middleMean(used, j * widthPx + i, values);
@@ -96,8 +96,10 @@ interface Lit {
 /**
  * The most frames that show the same in a block, to within the noise: a body that leaves its place slowly still covers a part
  * of it in many frames, each time another.
+ *
+ * @param atRest  a frame with a body at rest in the block: frames that show the same as it do not count if enough others do
  */
-function agreeing(frames: readonly Lit[], block: Block, widthPx: number): Luma[] {
+function agreeing(frames: readonly Lit[], atRest: Lit | null, block: Block, widthPx: number): Luma[] {
   const n = frames.length;
   const apart = new Float64Array(n * n);
   const all: number[] = [];
@@ -109,14 +111,19 @@ function agreeing(frames: readonly Lit[], block: Block, widthPx: number): Luma[]
       all.push(d);
     }
   }
-  const likeNoise = all.sort((p, q) => p - q)[Math.floor(all.length / 10)];
-  const like = (a: number, b: number) => apart[a * n + b] <= mostApart * likeNoise;
-  let best: Lit[] = [];
-  for (let a = 0; a < n; a++) {
-    const set = frames.filter((_, b) => like(a, b));
-    if (set.length > best.length) best = set;
-  }
-  return best.map((f) => f.luma);
+  const like = mostApart * all.sort((p, q) => p - q)[Math.floor(all.length / 10)];
+  const most = (among: readonly number[]) => {
+    let best: number[] = [];
+    for (const a of among) {
+      const set = among.filter((b) => apart[a * n + b] <= like);
+      if (set.length > best.length) best = set;
+    }
+    return best;
+  };
+  const every = Array.from(frames.keys());
+  const left = atRest && most(every.filter((a) => difference(frames[a], atRest, block, widthPx) > like));
+  const set = left && left.length >= leastFrames ? left : most(every);
+  return set.map((a) => frames[a].luma);
 }
 
 /** Root mean square difference of two frames in a block. */
@@ -145,34 +152,6 @@ function middleMean(lumas: readonly (Uint8Array | Uint16Array)[], at: number, va
   let sum = 0;
   for (let k = from; k < to; k++) sum += values[k];
   return sum / (to - from);
-}
-
-/** Zero-normalised cross-correlation of a frame with the frame that shows the body, over the inner part of its rest place. */
-function likeness(picture: Picture, rest: RestPlace): number {
-  const { widthPx, heightPx } = picture;
-  const r = Math.max(2, Math.round(rest.radiusPx / 2));
-  const [cx, cy] = [Math.round(rest.xPx), Math.round(rest.yPx)];
-  let n = 0;
-  let a = 0;
-  let b = 0;
-  let aa = 0;
-  let bb = 0;
-  let ab = 0;
-  for (let y = Math.max(0, cy - r); y <= Math.min(heightPx - 1, cy + r); y++) {
-    for (let x = Math.max(0, cx - r); x <= Math.min(widthPx - 1, cx + r); x++) {
-      const u = picture.luma[y * widthPx + x];
-      const v = rest.picture.luma[y * widthPx + x];
-      n++;
-      a += u;
-      b += v;
-      aa += u * u;
-      bb += v * v;
-      ab += u * v;
-    }
-  }
-  const va = aa - (a * a) / n;
-  const vb = bb - (b * b) / n;
-  return va > 0 && vb > 0 ? (ab - (a * b) / n) / Math.sqrt(va * vb) : 0;
 }
 
 /**
