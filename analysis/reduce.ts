@@ -1,13 +1,14 @@
 import { clockFindings } from './clock/clockFindings.ts';
 import { rowTime } from './clock/rowTime.ts';
+import { asGravity, fallAsBar, pixelBar, withoutGravityCheck } from './gravity/fallAsBar.ts';
 import { numbers } from './keyValues/numbers.ts';
 import type { WorldTrack } from './motion/worldTrack.ts';
 import { type Calibration, calibrate } from './scale/calibrate.ts';
-import { settle } from './sheet/assumptions.ts';
+import { type Settled, settle } from './sheet/assumptions.ts';
 import { checkSheet } from './sheet/checkSheet.ts';
 import type { BodyInFrame, Finding, Result, ResultFrame } from './sheet/result.ts';
 import type { Sheet } from './sheet/sheet.ts';
-import { siteGravity } from './theory/normalGravity.ts';
+import { type LocalGravity, siteGravity } from './theory/normalGravity.ts';
 import type { Track } from './track/track.ts';
 import { trackFindings } from './track/trackFindings.ts';
 import { verdicts } from './verdict/verdicts.ts';
@@ -29,15 +30,20 @@ export function reduce(input: ReduceInput): Result {
   const settled = settle(sheet);
   const rowTimeS = settled.rowTimeS;
 
-  const calibration = calibrate(sheet, settled, originOf(sheet, tracks));
-  const worldTracks = tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
   const gravity = siteGravity(sheet.site);
+  const origin = originOf(sheet, tracks);
+  const tracksBy = (calibration: Calibration) =>
+    tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
+  const fromGravity = needsGravity(sheet) ? scaleOfFall(sheet, settled, origin, gravity, tracksBy) : null;
+  const calibration = calibrate(sheet, fromGravity?.settled ?? settled, origin);
+  // A fall that gives no scale leaves nothing in metres: no track is better than one in unknown units.
+  const worldTracks = fromGravity?.found === false ? [] : tracksBy(calibration);
 
   const frameTimeS = frameTime(timeS, tracks);
-  const derived = numbers({
+  const allNumbers = numbers({
     tracks: worldTracks,
     common: {
-      length: calibration.length,
+      length: fromGravity ? calibration.length.map(asGravity) : calibration.length,
       time: [{ source: 'capture rate', uRel: settled.uCaptureRateRel }],
       uDownRad: calibration.uDownRad,
       frameTimeS,
@@ -47,6 +53,7 @@ export function reduce(input: ReduceInput): Result {
     gravity,
     sheet: { ...sheet, tether: settled.tether },
   });
+  const derived = fromGravity ? withoutGravityCheck(allNumbers) : allNumbers;
   const decided = verdicts(sheet.limits, derived.keyValues);
 
   return {
@@ -63,6 +70,7 @@ export function reduce(input: ReduceInput): Result {
       ...checkSheet(sheet),
       ...settled.findings,
       ...siteFindings(sheet),
+      ...(fromGravity ? [fromGravity.finding] : []),
       ...calibration.findings,
       ...trackFindings(tracks, sheet.bodies),
       ...clockFindings({
@@ -78,6 +86,31 @@ export function reduce(input: ReduceInput): Result {
       ...decided.findings,
     ],
   };
+}
+
+function needsGravity({ scale }: Sheet): boolean {
+  return scale.fromGravity === true && scale.bars.length === 0 && (scale.fiducials?.length ?? 0) < 4;
+}
+
+/** What is settled when the ball's fall is the scale bar: it lies in the plane of motion. */
+function scaleOfFall(
+  sheet: Sheet,
+  settled: Settled,
+  origin: { x: number; y: number },
+  gravity: LocalGravity,
+  tracksBy: (calibration: Calibration) => WorldTrack[],
+): { settled: Settled; finding: Finding; found: boolean } {
+  const inPlane = { ...settled, planeOffsetM: 0, uPlaneOffsetM: 0 };
+  const byPixels = calibrate(sheet, { ...inPlane, bars: [pixelBar] }, origin);
+  const fallPx = tracksBy(byPixels).find((t) => t.role === 'reference');
+  const found = fallPx && fallAsBar(fallPx, byPixels.metrePerPx, sheet, settled, gravity);
+  if (found) return { settled: { ...inPlane, bars: [found.bar] }, finding: found.finding, found: true };
+  const finding: Finding = {
+    level: 'stop',
+    code: 'scaleNotFromGravity',
+    text: 'scale.fromGravity: the reference body is not seen to fall far enough to give the scale; film a scale bar.',
+  };
+  return { settled: { ...inPlane, bars: [pixelBar] }, finding, found: false };
 }
 
 function siteFindings(sheet: Sheet): Finding[] {

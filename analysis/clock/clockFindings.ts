@@ -1,6 +1,7 @@
+import type { FallingTrack } from '../gravity/mainFall.ts';
 import type { Finding } from '../sheet/result.ts';
 import type { Sheet } from '../sheet/sheet.ts';
-import { type FallingTrack, stepFaultFindings, stepFaults } from './movingSteps.ts';
+import { stepFaultFindings, stepFaults } from './movingSteps.ts';
 import { rateMixUp, rateMixUpFinding } from './rateMixUp.ts';
 import { secondClockFindings } from './secondClock.ts';
 

@@ -1,13 +1,6 @@
+import type { FallingTrack } from '../gravity/mainFall.ts';
 import type { Finding } from '../sheet/result.ts';
 import { placesText } from './stepTimes.ts';
-
-/** Positions of a body that falls smoothly, with the frames and times they have. */
-export interface FallingTrack {
-  readonly frame: Int32Array;
-  readonly timeS: Float64Array;
-  readonly yM: Float64Array;
-  readonly uYM: Float64Array;
-}
 
 /** A step of a body between neighbouring frames that does not fit the steps on both sides of it. */
 export interface StepFault {
@@ -35,7 +28,7 @@ const sidesSigma = 5;
  * @param track  in the order of frames; steps over frames that are left out are passed over
  */
 export function stepFaults({ frame, timeS, yM, uYM }: FallingTrack): StepFault[] {
-  const speed: { frame: number; atS: number; mps: number; uMps: number }[] = [];
+  const speed: Step[] = [];
   for (let i = 1; i < frame.length; i++) {
     if (frame[i] !== frame[i - 1] + 1) continue;
     const stepS = timeS[i] - timeS[i - 1];
@@ -46,25 +39,54 @@ export function stepFaults({ frame, timeS, yM, uYM }: FallingTrack): StepFault[]
       uMps: Math.hypot(uYM[i], uYM[i - 1]) / stepS,
     });
   }
-  const faults: StepFault[] = [];
-  speed.forEach((s, i) => {
-    const before = speed.slice(Math.max(0, i - sideSteps), i);
-    const after = speed.slice(i + 1, i + 1 + sideSteps);
-    if (before.length < leastSideSteps || after.length < leastSideSteps) return;
-    const left = lineThrough(before, s.atS);
-    const right = lineThrough(after, s.atS);
-    const usual = (left.mps + right.mps) / 2;
-    const noise = Math.max(s.uMps, left.scatterMps, right.scatterMps);
-    const tolerance = Math.max(oddSigma * noise, oddShare * Math.abs(usual));
-    // The two sides must tell of the same motion.
-    if (Math.abs(left.mps - right.mps) > Math.max(0.1 * Math.abs(usual), sidesSigma * noise)) return;
-    if (Math.abs(s.mps - usual) <= tolerance) return;
-    const steps = s.mps / usual;
-    const whole = Math.abs(steps - Math.round(steps)) < 0.25;
-    const kind = whole && steps > 1.5 ? 'missing' : whole && Math.round(steps) === 0 ? 'doubled' : 'uneven';
-    faults.push({ frame: s.frame, steps, kind });
-  });
-  return faults;
+  // The worst first: a fault that is known no longer bends the lines by which its neighbours are judged.
+  const faults = new Map<number, StepFault>();
+  for (;;) {
+    const odd = speed
+      .map((_, i) => (faults.has(i) ? null : oddStep(speed, i, faults)))
+      .reduce((worst, o) => (o !== null && (worst === null || o.excess > worst.excess) ? o : worst), null);
+    if (odd === null) return [...faults.values()].sort((p, q) => p.frame - q.frame);
+    faults.set(odd.place, odd.fault);
+  }
+}
+
+interface Step {
+  readonly frame: number;
+  readonly atS: number;
+  readonly mps: number;
+  readonly uMps: number;
+}
+
+/** The step at a place, if it is off those on both its sides; steps known to be faults are passed over. */
+function oddStep(
+  speed: readonly Step[],
+  place: number,
+  known: ReadonlyMap<number, StepFault>,
+): { readonly place: number; readonly excess: number; readonly fault: StepFault } | null {
+  const before: Step[] = [];
+  const after: Step[] = [];
+  for (let i = place - 1; i >= 0 && before.length < sideSteps; i--) if (!known.has(i)) before.push(speed[i]);
+  for (let i = place + 1; i < speed.length && after.length < sideSteps; i++) {
+    if (!known.has(i)) after.push(speed[i]);
+  }
+  if (before.length < leastSideSteps || after.length < leastSideSteps) return null;
+  const step = speed[place];
+  const left = lineThrough(before, step.atS);
+  const right = lineThrough(after, step.atS);
+  const usual = (left.mps + right.mps) / 2;
+  const noise = Math.max(step.uMps, left.scatterMps, right.scatterMps);
+  // A body that hardly moves from frame to frame tells nothing of the time between them.
+  if (Math.abs(usual) < oddSigma * noise) return null;
+  const tolerance = Math.max(oddSigma * noise, oddShare * Math.abs(usual));
+  // The two sides must tell of the same motion.
+  if (Math.abs(left.mps - right.mps) > Math.max(0.1 * Math.abs(usual), sidesSigma * noise)) return null;
+  const excess = Math.abs(step.mps - usual) / tolerance;
+  if (excess <= 1) return null;
+  const steps = step.mps / usual;
+  // Whole numbers of steps are told from others as well as the noise lets them be.
+  const whole = Math.abs(steps - Math.round(steps)) < Math.min(0.45, 0.25 + (3 * noise) / Math.abs(usual));
+  const kind = whole && steps > 1.5 ? 'missing' : whole && Math.round(steps) === 0 ? 'doubled' : 'uneven';
+  return { place, excess, fault: { frame: step.frame, steps, kind } };
 }
 
 /** What the faults mean for the times, with the frames where they are. */

@@ -1,18 +1,11 @@
+import { type FallingTrack, mainFall } from '../gravity/mainFall.ts';
 import type { Finding } from '../sheet/result.ts';
-import { plainNumbers } from '../uncertainty/arithmetic.ts';
-import { leastSquares } from '../uncertainty/linearSystem.ts';
 import { commonRatesHz } from './commonRates.ts';
-import type { FallingTrack } from './movingSteps.ts';
 
 /** Less than this between stated and true rate is left to the gravity check: scale and drag can do as much. */
 const leastOff = 0.15;
 /** A common rate is proposed when it is as near as this: drag of a light ball and a careless scale take some per cent of g. */
 const proposalShare = 0.04;
-/** Parts of the fall that are fitted: not the release, not the landing. */
-const fromShare = 0.1;
-const toShare = 0.93;
-const leastPoints = 6;
-
 export interface RateMixUp {
   readonly gMps2: number;
   /** Stated rate over true rate, from the square root of g against local gravity. */
@@ -31,8 +24,8 @@ export interface RateMixUp {
  * @returns null when there is no fall to judge by, or it is within 15 % of the rate
  */
 export function rateMixUp(track: FallingTrack, rateHz: number, localGMps2: number): RateMixUp | null {
-  const gMps2 = plainFallMps2(track);
-  if (gMps2 === null || !(gMps2 > 0)) return null;
+  const gMps2 = mainFall(track)?.accelerationMps2 ?? Number.NaN;
+  if (!(gMps2 > 0)) return null;
   const ratio = Math.sqrt(gMps2 / localGMps2);
   if (Math.abs(Math.log(ratio)) < Math.log(1 + leastOff)) return null;
   const trueRateHz = rateHz / ratio;
@@ -60,24 +53,4 @@ export function rateMixUpFinding(mixUp: RateMixUp, rateHz: number, clockField: s
     code: 'captureRateDoubtful',
     text: `The reference body falls with ${Number(gMps2.toPrecision(3))} m/s², ${share} of local gravity: ${remedy}`,
   };
-}
-
-/** Acceleration of the body's main fall by a parabola, air not taken off; null when it hardly falls. */
-function plainFallMps2({ timeS, yM, uYM }: FallingTrack): number | null {
-  const top = yM[0];
-  let lowest = 0;
-  for (let i = 1; i < yM.length; i++) if (yM[i] < yM[lowest]) lowest = i;
-  const depthM = top - yM[lowest];
-  if (!(depthM > 20 * (uYM[lowest] ?? 0))) return null;
-  const used = Array.from({ length: lowest + 1 }, (_, i) => i).filter(
-    (i) => top - yM[i] > fromShare * depthM && top - yM[i] < toShare * depthM,
-  );
-  if (used.length < leastPoints) return null;
-  const zeroS = timeS[used[0]];
-  const [, , curvature] = leastSquares(
-    plainNumbers,
-    used.map((i) => [1, timeS[i] - zeroS, (timeS[i] - zeroS) ** 2]),
-    used.map((i) => yM[i]),
-  );
-  return -2 * curvature;
 }

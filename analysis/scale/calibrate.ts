@@ -189,6 +189,6 @@ function downDirection(
   const dx = bottom.xPx - top.xPx;
   const dy = bottom.yPx - top.yPx;
   // Marks of the plumb line are set like those of the bars: half a pixel each where no bar says better.
-  const uMarkPx = settled.bars[0]?.uMarkPx ?? 0.5;
+  const uMarkPx = settled.bars[0]?.uMarkPx || 0.5;
   return { downRad: -Math.atan2(dx, dy), uDownRad: (Math.SQRT2 * uMarkPx) / Math.hypot(dx, dy) };
 }

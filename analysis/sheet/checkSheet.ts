@@ -39,11 +39,18 @@ export function checkSheet(sheet: Sheet): Finding[] {
     );
   }
 
-  if (scale.bars.length === 0 && (scale.fiducials?.length ?? 0) < 4) {
+  const filmed = scale.bars.length > 0 || (scale.fiducials?.length ?? 0) >= 4;
+  if (!filmed && scale.fromGravity === undefined) {
     stop(
       'scaleMissing',
       'scale: state a scale bar (scale.bars) or at least four fiducials (scale.fiducials).',
     );
+  }
+  if (!filmed && scale.fromGravity && !bodies.some((b) => b.role === 'reference')) {
+    stop('referenceMissing', 'scale.fromGravity needs a body with the role "reference" that falls freely.');
+  }
+  if (filmed && scale.fromGravity) {
+    caution('fromGravityNotUsed', 'scale.fromGravity was not used: a scale bar or fiducials are stated.');
   }
   scale.bars.forEach((bar, i) => {
     const lengthPx = Math.hypot(bar.b.x - bar.a.x, bar.b.y - bar.a.y);

@@ -73,6 +73,8 @@ const scale = z.object({
   bars: z.array(bar).default([]),
   plumb: z.object({ a: pixelPoint, b: pixelPoint }).optional(),
   fiducials: z.array(z.object({ x: finite, y: finite, worldXM: finite, worldYM: finite })).optional(),
+  /** No bar was filmed: take the scale at which the reference body falls with local gravity. The gravity check is lost. */
+  fromGravity: z.literal(true).optional(),
   /** How far the bodies' plane is in front of (+) the plane of the scale bar, towards the camera. */
   planeOffsetM: finite.optional(),
   uPlaneOffsetM: notNegative.optional(),

@@ -67,7 +67,7 @@ describe('stepFaults', () => {
         const found = stepFaults(fall(1000, 25e-6, seed, (n) => (n < at ? n : n + 1)));
         expect(found.map((f) => [f.frame, f.kind])).toEqual([[at, 'missing']]);
       }),
-      { numRuns: 300 },
+      { numRuns: 100 },
     );
   });
 
