@@ -2,7 +2,8 @@ import type { Common } from '../motion/worldTrack.ts';
 import type { Air } from '../theory/air.ts';
 import type { Arithmetic, Operand } from '../uncertainty/arithmetic.ts';
 import { leastSquares } from '../uncertainty/linearSystem.ts';
-import type { InputQuantity, Measurement } from '../uncertainty/measurement.ts';
+import type { Measurement } from '../uncertainty/measurement.ts';
+import { factorInputs, factorOn } from '../uncertainty/scaledMeasurement.ts';
 import { type BallInput, ballInputs, ballOf, lagInAir, type StatedBall } from './ballInputs.ts';
 import { fallInAir } from './fallInAir.ts';
 
@@ -30,29 +31,19 @@ export interface BallGravityInput {
  */
 export function ballGravity(input: BallGravityInput): Measurement<string, 'gMps2'> {
   const { afterS, yM, uYM, uFitMps2, dof, common, ball, air, localGMps2 } = input;
-  const factors = (kind: 'length' | 'time') =>
-    Object.fromEntries(
-      common[kind].map((c, i): [string, InputQuantity] => [
-        `${kind}${i}`,
-        { source: c.source, value: 1, u: c.uRel, unit: '1' },
-      ]),
-    );
-  const lengths = factors('length');
-  const times = factors('time');
   const inBall = ball && ballInputs(ball, air);
   const weights = uYM.map((u) => 1 / u ** 2);
   return {
     inputs: {
-      ...lengths,
-      ...times,
+      ...factorInputs(common),
       positions: { source: 'positions', value: 0, u: uFitMps2, unit: 'm/s2', dof },
       downRad: { source: 'direction of down', value: 0, u: common.uDownRad, unit: 'rad' },
       ...(inBall ?? {}),
     },
     outputs: <T>(m: Arithmetic<T>, x: Readonly<Record<string, T>>) => {
       // A fall along a direction that is off by an angle is seen shorter by its cosine.
-      const length = m.divide(m.multiply(...Object.keys(lengths).map((k) => x[k])), m.cos(x.downRad));
-      const stretch = m.multiply(...Object.keys(times).map((k) => x[k]));
+      const length = m.divide(factorOn('length', common, m, x), m.cos(x.downRad));
+      const stretch = factorOn('time', common, m, x);
       let heights: Operand<T>[] = Array.from(yM, (y) => m.multiply(y, length));
       if (ball) {
         const inAir = ballOf(x as Readonly<Record<BallInput, T>>, localGMps2, ball.dragCoefficient);

@@ -6,6 +6,7 @@ import type { Contribution } from '../uncertainty/effectiveDof.ts';
 import { leastSquares } from '../uncertainty/linearSystem.ts';
 import type { InputQuantity, Measurement } from '../uncertainty/measurement.ts';
 import { propagate } from '../uncertainty/propagate.ts';
+import { factorInputs, factorOn } from '../uncertainty/scaledMeasurement.ts';
 import { type BallInput, ballInputs, ballOf, type StatedBall } from './ballInputs.ts';
 import { fallInAir } from './fallInAir.ts';
 
@@ -46,14 +47,9 @@ export function scaleFromGravity(
   const n = afterS.length;
   if (n < leastPoints) return null;
   const weights = uPx.map((u) => 1 / u ** 2);
-  const times = Object.fromEntries(
-    time.map((t, i): [string, InputQuantity] => [
-      `time${i}`,
-      { source: t.source, value: 1, u: t.uRel, unit: '1' },
-    ]),
-  );
+  const factors = { length: [], time };
   const fitted = <T>(m: Arithmetic<T>, x: Readonly<Record<string, T>>): T[] => {
-    const stretch = m.multiply(...Object.keys(times).map((k) => x[k]));
+    const stretch = factorOn('time', factors, m, x);
     const drops = ball
       ? fallInAir(m, afterS, stretch, ballOf(x as Readonly<Record<BallInput, T>>, x.g, ball.dragCoefficient))
       : Array.from(afterS, (t) => m.multiply(0.5, x.g, m.power(m.multiply(t, stretch), 2)));
@@ -62,7 +58,7 @@ export function scaleFromGravity(
   };
   const inputs: Record<string, InputQuantity> = {
     g: { source: 'local gravity', value: gravity.gMps2, u: gravity.uGMps2, unit: 'm/s2' },
-    ...times,
+    ...factorInputs(factors),
     ...(ball ? ballInputs(ball, air) : {}),
   };
   const values = Object.fromEntries(Object.entries(inputs).map(([k, q]) => [k, q.value]));

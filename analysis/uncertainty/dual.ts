@@ -30,18 +30,23 @@ export function dualNumbers(n: number, second = false): DualNumbers {
   const lift = (x: Operand<Dual>): Dual => (typeof x === 'number' ? constant(x) : x);
   const plain = (x: Operand<Dual>) => (typeof x === 'number' ? x : x.value);
 
+  /** Adds factor · p qᵀ. Most numbers depend on few inputs: rows of zero are passed over. */
+  function addProduct(into: Float64Array, factor: number, p: Float64Array, q: Float64Array): void {
+    for (let i = 0; i < n; i++) {
+      const scale = factor * p[i];
+      if (scale === 0) continue;
+      for (let j = 0; j < n; j++) into[i * n + j] += scale * q[j];
+    }
+  }
+
   /** h(x) from h, h' and h'' at x. */
   function unary(x: Dual, value: number, first: number, secondDerivative: number): Dual {
     const slope = new Float64Array(n);
     for (let i = 0; i < n; i++) slope[i] = first * x.slope[i];
     if (x.curvature === null) return { value, slope, curvature: null };
     const curvature = new Float64Array(n * n);
-    for (let i = 0; i < n; i++) {
-      for (let j = 0; j < n; j++) {
-        const k = i * n + j;
-        curvature[k] = first * x.curvature[k] + secondDerivative * x.slope[i] * x.slope[j];
-      }
-    }
+    for (let k = 0; k < n * n; k++) curvature[k] = first * x.curvature[k];
+    if (secondDerivative !== 0) addProduct(curvature, secondDerivative, x.slope, x.slope);
     return { value, slope, curvature };
   }
 
@@ -56,16 +61,12 @@ export function dualNumbers(n: number, second = false): DualNumbers {
     for (let i = 0; i < n; i++) slope[i] = ha * a.slope[i] + hb * b.slope[i];
     if (a.curvature === null || b.curvature === null) return { value, slope, curvature: null };
     const curvature = new Float64Array(n * n);
-    for (let i = 0; i < n; i++) {
-      for (let j = 0; j < n; j++) {
-        const k = i * n + j;
-        curvature[k] =
-          ha * a.curvature[k] +
-          hb * b.curvature[k] +
-          haa * a.slope[i] * a.slope[j] +
-          hab * (a.slope[i] * b.slope[j] + b.slope[i] * a.slope[j]) +
-          hbb * b.slope[i] * b.slope[j];
-      }
+    for (let k = 0; k < n * n; k++) curvature[k] = ha * a.curvature[k] + hb * b.curvature[k];
+    if (haa !== 0) addProduct(curvature, haa, a.slope, a.slope);
+    if (hbb !== 0) addProduct(curvature, hbb, b.slope, b.slope);
+    if (hab !== 0) {
+      addProduct(curvature, hab, a.slope, b.slope);
+      addProduct(curvature, hab, b.slope, a.slope);
     }
     return { value, slope, curvature };
   }

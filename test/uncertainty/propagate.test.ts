@@ -16,6 +16,7 @@ import type { Measurement } from '../../analysis/uncertainty/measurement.ts';
 import { monteCarlo } from '../../analysis/uncertainty/monteCarlo.ts';
 import { numericalTolerance } from '../../analysis/uncertainty/numericalTolerance.ts';
 import { propagate } from '../../analysis/uncertainty/propagate.ts';
+import { scaledMeasurement } from '../../analysis/uncertainty/scaledMeasurement.ts';
 import { seededDraws } from '../../analysis/uncertainty/seededDraws.ts';
 
 /** Speed from a length and a time. */
@@ -125,6 +126,41 @@ describe('a key value from its measurement function', () => {
     // t of 36 degrees of freedom against draws that take u as known, half of them rectangular: 0.115 against 0.107, u 0.057
     expect(both.monteCarlo?.agreesToDigits).toBe(0);
     expect(withMonteCarlo(law, speed(), 'speedMps', 7)).toEqual(both);
+  });
+});
+
+describe('scaledMeasurement', () => {
+  const factors = {
+    length: [
+      { source: 'scale bar length', uRel: 0.001 },
+      { source: 'scale bar marks', uRel: 0.002 },
+    ],
+    time: [{ source: 'capture rate', uRel: 0.0005 }],
+  };
+
+  it('gives common factors by their powers and own sources as they are', () => {
+    const speed = scaledMeasurement(12, { length: 1, time: -1 }, factors, [
+      { source: 'positions and smoothing', u: 0.03, unit: 'm/s', dof: 12 },
+    ]);
+    const { value, contributions } = propagate(speed).outputs.y;
+    expect(value).toBe(12);
+    const rows = contributions.map((c) => [
+      c.source,
+      Number(c.u.toFixed(9)),
+      Number(c.sensitivity?.toFixed(9)),
+    ]);
+    expect(rows).toEqual([
+      ['scale bar length', 0.012, 12],
+      ['scale bar marks', 0.024, 12],
+      ['capture rate', 0.006, -12],
+      ['positions and smoothing', 0.03, 1],
+    ]);
+    expect(measuredBy(speed, 'y', 'tip.peakSpeed', 'm/s').budget[3].dof).toBe(12);
+  });
+
+  it('leaves out what a value does not depend on', () => {
+    const time = scaledMeasurement(0.4, { length: 0, time: 1 }, factors, []);
+    expect(propagate(time).outputs.y.contributions.map((c) => c.source)).toEqual(['capture rate']);
   });
 });
 
