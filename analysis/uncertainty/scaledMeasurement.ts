@@ -2,7 +2,7 @@ import type { Arithmetic } from './arithmetic.ts';
 import type { InputQuantity, Measurement } from './measurement.ts';
 
 /** A relative standard uncertainty that all lengths, or all times, share. */
-export interface CommonFactor {
+interface CommonFactor {
   readonly source: string;
   readonly uRel: number;
 }
