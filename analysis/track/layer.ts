@@ -1,12 +1,12 @@
 import type { Box } from './normalEquations.ts';
 import { quinticCoefficients, quinticWeights, TAPS, TAPS_BEFORE } from './spline.ts';
 
-/** Pixels around the window that its spline reaches for a shift of up to half a pixel. */
+/** Pixels around the window that its spline reaches for a shift of less than a pixel. */
 export const REACH = 3;
 
 /**
  * A square picture of side 2 · half + 1 around the body's own zero, as a quintic spline, with a border of REACH so that it
- * can be shifted by up to half a pixel.
+ * can be shifted by less than a pixel.
  */
 export interface Layer {
   readonly half: number;
@@ -36,7 +36,7 @@ export function sampledFor(half: number): Sampled {
 /** Samples layers of one size; holds the buffers of the separable evaluation. */
 export interface Sampler {
   /**
-   * Values and slopes of the layer moved by (dxPx, dyPx), |d| ≤ 0.5: into(u) = layer(u - d) for whole u.
+   * Values and slopes of the layer moved by (dxPx, dyPx), |d| < 1: into(u) = layer(u - d) for whole u.
    * The slopes are with respect to u. Only the pixels of the box are filled, where one is given.
    */
   sample(layer: Layer, dxPx: number, dyPx: number, into: Sampled, box?: Box): void;

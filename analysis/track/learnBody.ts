@@ -19,6 +19,12 @@ const leastCovered = 9;
 /** Blur of a coverage edge that stands for the optics, where nothing better is known [px]. */
 const opticsPx = 0.7;
 
+/** Blur of the difference in which a body is noticed [px]: white noise falls to 1/(2 σ √π) of it. */
+const noticingPx = 0.8;
+/** How far beyond the guessed rim a body may reach after all [px], and how far the guess may be off away from its rim. */
+const beyondPx = 4;
+const uAway = 0.1;
+
 /** A first guess of a body's coverage, with its standard deviation at each pixel of the window with its border. */
 export interface CoverageGuess {
   readonly coverage: Float64Array;
@@ -35,12 +41,17 @@ export interface CoverageGuess {
 export function guessCoverage(still: StillBody, behind: Float64Array): CoverageGuess | null {
   const outer = still.half + REACH;
   const side = 2 * outer + 1;
-  const difference = Float64Array.from(still.mean, (v, u) =>
-    Math.hypot((u % side) - outer, Math.floor(u / side) - outer) <= still.half + 0.5
-      ? Math.abs(v - behind[u])
-      : 0,
+  // Smoothed over about a pixel, which takes more from the noise than from a body that is worth following.
+  const signed = smoothed(
+    still.mean.map((v, u) => v - behind[u]),
+    side,
+    noticingPx,
   );
-  const noticeable = Math.max(2, 4 * still.noise * Math.sqrt(1 / still.frames + 0.04));
+  const difference = signed.map((d, u) =>
+    Math.hypot((u % side) - outer, Math.floor(u / side) - outer) <= still.half + 0.5 ? Math.abs(d) : 0,
+  );
+  const left = 1 / (2 * noticingPx * Math.sqrt(Math.PI));
+  const noticeable = Math.max(1, 4 * left * still.noise * Math.sqrt(1 / still.frames + 0.04));
   const noticed = difference.filter((d) => d > noticeable).sort();
   if (noticed.length < leastCovered) return null;
   // Optics smear the edge: half coverage is where the difference is about half of what it is inside. But a shaded body may
@@ -59,9 +70,11 @@ export function guessCoverage(still: StillBody, behind: Float64Array): CoverageG
   if (sure.reduce((s, v) => s + v, 0) < leastCovered) return null;
   const hard = Float64Array.from(sure, (v, i) => 0.5 * (v + perhaps[i]));
   const rim = smoothed(hard, side, 1.5);
+  let near = perhaps;
+  for (let k = 0; k < beyondPx; k++) near = spread(near, side, 1);
   return {
     coverage: smoothed(hard, side, opticsPx),
-    u: rim.map((r) => (r < 0.003 ? 0 : 0.02 + 0.4 * Math.min(r, 1 - r))),
+    u: rim.map((r, i) => (near[i] === 0 ? 0 : uAway + 0.4 * Math.min(r, 1 - r))),
   };
 }
 

@@ -23,8 +23,10 @@ export interface Known {
   readonly sighting: (n: number, state: 'measured', match: Match) => Sighting;
 }
 
-/** Frames from which a look is learned: more would cost time and tell little. */
+/** Frames from which a look is learned, and their pixels together: more would cost time and tell little. */
 const mostLookFrames = 120;
+const leastLookFrames = 30;
+const mostLookPixels = 200_000;
 
 /**
  * Matches the kept frames again. The first of them were matched with what was known of the body then; now its look is learned
@@ -76,8 +78,10 @@ function sharpFrames(
   const sharp = cuttings
     .of(sightings.slice(0, steady))
     .filter(([i]) => exposureShare * Math.hypot(speeds[i].x, speeds[i].y) <= mostBlurPx);
-  const every = Math.max(1, sharp.length / mostLookFrames);
-  return Array.from({ length: Math.min(sharp.length, mostLookFrames) }, (_, k) => {
+  const wanted = mostLookPixels / (2 * still.half + 1) ** 2;
+  const most = Math.min(mostLookFrames, Math.max(leastLookFrames, Math.round(wanted)));
+  const every = Math.max(1, sharp.length / most);
+  return Array.from({ length: Math.min(sharp.length, most) }, (_, k) => {
     const [i, cut] = sharp[Math.floor(k * every)];
     const s = sightings[i];
     return {

@@ -91,6 +91,7 @@ const huberAt = 2.5;
 /** Beyond this a pixel shows something else (a tether that crosses), which can be told once the match is near. */
 const foreignAt = 6;
 const nearPx = 0.05;
+const recentrePx = 0.7;
 const mostSteps = 12;
 /** The next step would be shorter than this, or than this share of the place's standard uncertainty. */
 const settledPx = 2e-4;
@@ -140,8 +141,8 @@ export function makeMatcher(half: number): Matcher {
       const level = { gain: 1, offset: 0 };
       let x = startXPx;
       let y = startYPx;
-      let left = Number.NaN;
-      let top = Number.NaN;
+      let wholeX = Number.NaN;
+      let wholeY = Number.NaN;
       let box = masked.box;
       let noise = sigma;
       let lengthPx = Number.POSITIVE_INFINITY;
@@ -153,12 +154,13 @@ export function makeMatcher(half: number): Matcher {
       }
 
       for (let steps = 1; steps <= mostSteps; steps++) {
-        const wholeX = Math.round(x);
-        const wholeY = Math.round(y);
-        if (wholeX - half !== left || wholeY - half !== top) {
+        // Only a step well over the edge moves the window: at the edge it would go to and fro.
+        if (!(Math.abs(x - wholeX) < recentrePx && Math.abs(y - wholeY) < recentrePx)) {
           cleared = false;
-          left = wholeX - half;
-          top = wholeY - half;
+          wholeX = Math.round(x);
+          wholeY = Math.round(y);
+          const left = wholeX - half;
+          const top = wholeY - half;
           box = insideOf(masked.box, left, top, picture);
           fitting.count = gather(fitting, picture, plate, brightness, box, left, top);
         }

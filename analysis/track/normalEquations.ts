@@ -94,33 +94,44 @@ export function fitGainAndOffset(
   return true;
 }
 
+/** Share of the pixels that must be left, or neighbours are not left out. */
+const leastKept = 0.7;
+
 /**
- * Leaves out pixels that show something else than body and plate, and their neighbours, into which the optics smear it.
+ * Leaves out pixels that show something else than body and plate, and their neighbours, into which the optics smear it; a body
+ * of so few pixels that this would leave too little keeps the neighbours.
  *
  * @param limit  residual beyond which a pixel is foreign [grey levels]
  * @returns whether there were any
  */
 export function leaveOutForeign(fitting: Fitting, { gain, offset }: GainAndOffset, limit: number): boolean {
-  const { pixel, seen, free, appearance, coverage, foreign, side } = fitting;
-  const { count } = fitting;
+  const { pixel, count, seen, free, appearance, coverage, foreign, side } = fitting;
+  foreign.fill(0);
   let any = false;
   for (let k = 0; k < count; k++) {
     const u = pixel[k];
     const r = seen[u] - (gain * appearance.value[u] + offset * coverage.value[u] + free[u]);
     if (r <= limit && r >= -limit) continue;
-    if (!any) foreign.fill(0);
     any = true;
     const column = u % side;
     for (let j = u - side; j <= u + side; j += side) {
-      for (let i = j - (column > 0 ? 1 : 0); i <= j + (column < side - 1 ? 1 : 0); i++) foreign[i] = 1;
+      for (let i = j - (column > 0 ? 1 : 0); i <= j + (column < side - 1 ? 1 : 0); i++)
+        if (i >= 0 && i < foreign.length) foreign[i] = Math.max(foreign[i], NEIGHBOUR);
     }
+    foreign[u] = FOREIGN;
   }
   if (!any) return false;
+  let clean = 0;
+  for (let k = 0; k < count; k++) if (foreign[pixel[k]] === 0) clean++;
+  const leftOut = clean >= leastKept * count ? NEIGHBOUR : FOREIGN;
   let kept = 0;
-  for (let k = 0; k < count; k++) if (foreign[pixel[k]] === 0) pixel[kept++] = pixel[k];
+  for (let k = 0; k < count; k++) if (foreign[pixel[k]] < leftOut) pixel[kept++] = pixel[k];
   fitting.count = kept;
   return true;
 }
+
+const NEIGHBOUR = 1;
+const FOREIGN = 2;
 
 export function emptyEquations(): NormalEquations {
   return {

@@ -14,6 +14,8 @@ export interface RestPlace {
 
 /** With fewer frames than this a median may still show a body. */
 const leastFrames = 7;
+/** So many frames that show the same in a block, and not the body that rested there, show the background. */
+const leastAlike = 4;
 /** Side of the blocks in which frames about a rest place are held against each other [px]. */
 const blockPx = 8;
 /** Frames differ by no more than this factor on what two frames of the same differ by: 64 pixels tell that to 9 %. */
@@ -54,7 +56,7 @@ export function plateOf(frames: readonly SampledFrame[], rests: readonly RestPla
         const awayPx = Math.hypot((block.fromX + block.toX) / 2 - cx, (block.fromY + block.toY) / 2 - cy);
         const shown = awayPx <= r / 2 + blockPx / 2 ? atRest : null;
         const used = agreeing(lit, shown, block, widthPx);
-        if (used.length < leastFrames) continue;
+        if (used.length < leastAlike) continue;
         for (let j = y; j <= block.toY; j++) {
           for (let i = x; i <= block.toX; i++)
             level[j * widthPx + i] = middleMean(used, j * widthPx + i, values);
@@ -122,7 +124,7 @@ function agreeing(frames: readonly Lit[], atRest: Lit | null, block: Block, widt
   };
   const every = Array.from(frames.keys());
   const left = atRest && most(every.filter((a) => difference(frames[a], atRest, block, widthPx) > like));
-  const set = left && left.length >= leastFrames ? left : most(every);
+  const set = left && left.length >= leastAlike ? left : most(every);
   return set.map((a) => frames[a].luma);
 }
 
