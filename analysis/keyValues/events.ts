@@ -37,6 +37,13 @@ export function eventsOf(input: NumbersInput): Events {
   const ballRelease = ball && releases.get(ball.bodyId);
   if (tipRelease && ballRelease) findings.push(...releaseDifference(tipRelease, ballRelease));
 
+  if (ballRelease) {
+    keyValues.push(
+      measured('ball.releaseTime', ballRelease.timeS, 's', [{ source: 'positions', u: ballRelease.uTimeS }], {
+        definition: 'instant the reference body starts to fall, on the clock of the frames',
+      }),
+    );
+  }
   let fall: BallFall | null = null;
   if (ball && ballRelease) {
     fall = ballFall(

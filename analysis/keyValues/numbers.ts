@@ -1,14 +1,16 @@
 import { adaptive } from '../motion/adaptive.ts';
 import type { Break } from '../motion/breaks.ts';
 import { motionOf } from '../motion/motionOf.ts';
+import { methodOf } from '../motion/prescribed/methodOf.ts';
+import { methodProblem } from '../motion/prescribed/methodProblem.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
 import type { Finding, KeyValue, Motion, Theory } from '../sheet/result.ts';
 import type { Sheet, SheetBody } from '../sheet/sheet.ts';
 import { theories } from '../theory/theories.ts';
 import { uLengthRel } from './commonSources.ts';
 import { eventsOf } from './events.ts';
+import { motionValues } from './motionValues.ts';
 import type { NumbersInput } from './numbersInput.ts';
-import { peaksOf } from './peaks.ts';
 
 export interface Numbers {
   readonly motion: Record<string, Motion>;
@@ -24,6 +26,9 @@ const leastPoints = 8;
 export function numbers(input: NumbersInput): Numbers {
   const { common, gravity, sheet } = input;
   const usable = input.tracks.filter((t) => t.timeS.length >= leastPoints);
+  const unfit = methodProblem(sheet.motion, usable, common.frameTimeS);
+  if (unfit) return { motion: {}, keyValues: [], theory: [], findings: [unfit] };
+  const method = methodOf(sheet.motion, adaptive);
   const { releases, extension, fall, keyValues, findings } = eventsOf({ ...input, tracks: usable });
 
   const motions = new Map(
@@ -35,20 +40,13 @@ export function numbers(input: NumbersInput): Numbers {
           ? [{ kind: 'extension' as const, timeS: extension.timeS, uTimeS: extension.uTimeS }]
           : []),
       ];
-      return [t.bodyId, motionOf(t, breaks, common.frameTimeS, adaptive)];
+      return [t.bodyId, motionOf(t, breaks, common.frameTimeS, method)];
     }),
   );
 
-  const tip = usable.find((t) => t.role === 'tip');
-  const tipRelease = tip && releases.get(tip.bodyId);
-  const tipMotion = tip && motions.get(tip.bodyId);
-  if (tip && tipRelease && tipMotion) {
-    const lastS = tip.timeS[tip.timeS.length - 1];
-    const toS = extension?.timeS ?? lastS;
-    const peaks = peaksOf(tipMotion, tipRelease.timeS, toS, common, extension !== null);
-    keyValues.push(...peaks.keyValues);
-    findings.push(...peaks.findings);
-  }
+  const ofMotion = motionValues({ ...input, tracks: usable }, { releases, extension, fall }, motions);
+  keyValues.push(...ofMotion.keyValues);
+  findings.push(...ofMotion.findings);
 
   const theory = usable.flatMap((track) => {
     const release = releases.get(track.bodyId);

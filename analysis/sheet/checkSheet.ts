@@ -1,3 +1,4 @@
+import { rateProblem } from '../motion/prescribed/methodProblem.ts';
 import { quantities, unitOfQuantity } from '../verdict/quantities.ts';
 import { sameUnit } from '../verdict/sameUnit.ts';
 import type { Finding } from './result.ts';
@@ -26,6 +27,10 @@ export function checkSheet(sheet: Sheet): Finding[] {
       'framesReversed',
       `footage.lastFrame (${footage.lastFrame}) must be after footage.firstFrame (${footage.firstFrame}).`,
     );
+  }
+  if (clock.kind === 'captureRate') {
+    const unfit = rateProblem(sheet.motion, clock.captureRateHz);
+    if (unfit) findings.push(unfit);
   }
 
   if (

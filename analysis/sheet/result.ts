@@ -96,6 +96,10 @@ const keyValue = z.object({
   k: z.number(),
   /** For values that belong to a bandwidth. */
   bandwidthHz: z.number().optional(),
+  /** The footage ends, or is cut by extension, before the quantity has passed its peak: the true value may be greater. */
+  atLeast: z.boolean().optional(),
+  /** Frames in half the width of the peak at half its height; below 3 the frame rate limits the value, below 2 none is given. */
+  framesInHalfWidth: z.number().optional(),
   /** How the value is defined, where the name alone leaves a choice. */
   definition: z.string().optional(),
   budget: z.array(budgetRow),

@@ -12,6 +12,8 @@ const rounding = 1e-12;
 /** What a key value says beside its figures. */
 export interface KeyValueExtras {
   readonly bandwidthHz?: number;
+  readonly atLeast?: true;
+  readonly framesInHalfWidth?: number;
   readonly definition?: string;
 }
 
@@ -49,8 +51,7 @@ export function measured(
     dof,
     U95: k * u,
     k,
-    ...(extras.bandwidthHz === undefined ? {} : { bandwidthHz: extras.bandwidthHz }),
-    ...(extras.definition === undefined ? {} : { definition: extras.definition }),
+    ...extras,
     budget: contributions.filter((c) => c.u > 0).map((c) => ({ ...c })),
     ...(correlations.length === 0
       ? {}

@@ -40,9 +40,42 @@ export const quantities: readonly Quantity[] = [
     unit: '1',
     meaning: 'fall of the reference body until extension, divided by L',
   },
+  {
+    quantity: 'ball.releaseTime',
+    unit: 's',
+    meaning: 'instant at which the reference body was let go, on the clock of the frames',
+  },
+  {
+    quantity: 'tip.leadTime',
+    unit: 's',
+    meaning: 'time from release until the tip is significantly ahead of the reference body',
+  },
 ];
+
+/** Quantities of which a sheet may ask for several: its motion section numbers them from 1 (`tip.meanAcceleration.1`). */
+export const numberedQuantities: readonly Quantity[] = (['tip', 'ball'] as const).flatMap((body) => [
+  {
+    quantity: `${body}.meanAcceleration`,
+    unit: 'm/s2',
+    meaning:
+      'magnitude of the change of velocity over an interval of the motion section, divided by its length',
+  },
+  {
+    quantity: `${body}.maxAcceleration`,
+    unit: 'm/s2',
+    meaning: 'largest acceleration in an interval of the motion section',
+  },
+  {
+    quantity: `${body}.speedAtHeight`,
+    unit: 'm/s',
+    meaning: 'speed at a height of the motion section, first passed after release',
+  },
+]);
 
 /** The unit in which a quantity is given; null if there is no such quantity. */
 export function unitOfQuantity(quantity: string): string | null {
-  return quantities.find((q) => q.quantity === quantity)?.unit ?? null;
+  const stem = /^(.+)\.[1-9]\d*$/.exec(quantity)?.[1];
+  const found =
+    quantities.find((q) => q.quantity === quantity) ?? numberedQuantities.find((q) => q.quantity === stem);
+  return found?.unit ?? null;
 }

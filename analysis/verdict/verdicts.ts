@@ -4,8 +4,8 @@ import { decisionRules, type Outcome } from './decisionRules.ts';
 import { sameUnit } from './sameUnit.ts';
 
 /**
- * Holds each limit against its key value. A limit whose quantity has no value, or is stated in another unit, is undecided and
- * a finding says why.
+ * Holds each limit against its key value. A limit whose quantity has no value, or is stated in another unit, is undecided, as is a
+ * greatest value that a least one seems to keep; a finding says why.
  */
 export function verdicts(
   limits: readonly SheetLimit[],
@@ -37,7 +37,16 @@ export function verdicts(
       });
       return open;
     }
-    return decide(limit, value);
+    const verdict = decide(limit, value);
+    if (verdict.outcome === 'pass' && limit.max !== undefined && value.atLeast) {
+      findings.push({
+        level: 'caution',
+        code: 'limitAtLeast',
+        text: `The limit on ${limit.quantity} is undecided: the value is only a least one (see the other findings), and the true one may be above ${limit.max} ${limit.unit}.`,
+      });
+      return { ...verdict, outcome: 'undecided' };
+    }
+    return verdict;
   });
   return { verdicts: decided, findings };
 }

@@ -8,7 +8,7 @@ const widthOfText = 110;
 
 /** A result for a person: key values with uncertainty, verdicts, findings. Lines without end marks. */
 export function summary(sheet: Sheet, result: Result): string[] {
-  const { keyValues, verdicts, findings } = result;
+  const { keyValues, motion, verdicts, findings } = result;
   const lines = ['Key values (value ± standard uncertainty; U95 is the half-width of the 95 % interval)'];
   lines.push(
     ...table(
@@ -20,6 +20,7 @@ export function summary(sheet: Sheet, result: Result): string[] {
       ]),
     ),
   );
+  if (Object.keys(motion).length > 0) lines.push('', 'Motion', ...motionLines(motion));
   if (verdicts.length > 0) {
     lines.push('', 'Verdict');
     lines.push(
@@ -52,6 +53,28 @@ export function findingLines(findings: readonly Finding[]): string[] {
 function twoDigits(value: number): string {
   const text = value.toPrecision(2);
   return text.includes('e') ? String(Number(text)) : text;
+}
+
+/** Each method once, then how far it passes the acceleration of each body. */
+function motionLines(motion: Result['motion']): string[] {
+  const methods = [...new Set(Object.values(motion).map((m) => m.method))];
+  return [
+    ...methods.flatMap((method) => wrapped(method, widthOfText - 2).map((line) => `  ${line}`)),
+    ...table(Object.entries(motion).map(([body, m]) => [body, bandwidthText(m.settings.bandwidthHz)])),
+  ];
+}
+
+/** From the least to the greatest bandwidth of a body's motion. */
+function bandwidthText(bandwidthHz: unknown): string {
+  if (!Array.isArray(bandwidthHz)) return '';
+  const known = bandwidthHz.filter((hz) => typeof hz === 'number' && Number.isFinite(hz));
+  if (known.length === 0) return '';
+  const least = known.reduce((a, b) => Math.min(a, b));
+  const most = known.reduce((a, b) => Math.max(a, b));
+  const figure = (hz: number) => String(Number(hz.toPrecision(3)));
+  return least === most
+    ? `bandwidth ${figure(least)} Hz`
+    : `bandwidth ${figure(least)} to ${figure(most)} Hz`;
 }
 
 /** A limit is exact, so its margin is as uncertain as the value. */

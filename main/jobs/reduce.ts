@@ -69,6 +69,7 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
       tracks,
       findings: [...(order.findings ?? []), ...index.findings, ...followed.findings, ...times.findings],
     });
+    refuseIfUnfit(result);
     refuseIfLost(result);
     return result;
   } finally {
@@ -92,6 +93,12 @@ function footageFacts(index: FootageIndex, source: FrameSource): Result['inputs'
     lumaRule: index.lumaRule,
     decoder: `${source.backend.name} ${source.backend.version}`,
   };
+}
+
+/** A method that the sheet prescribes and this footage cannot carry is the sheet's to change. */
+function refuseIfUnfit(result: Result): void {
+  const unfit = result.findings.find((f) => f.code === 'methodUnfit');
+  if (unfit) throw new Refusal(unfit.code, 2, unfit.text);
 }
 
 /** A result without one key value is none: say which body was lost, and where. */

@@ -30,6 +30,25 @@ describe('summary', () => {
     expect(lines[2]).toMatch(/^ {2}tip\.peakAcceleration +\(3140 ± 490\) m\/s² +U95 960 +bandwidth 168 Hz$/);
   });
 
+  it('names each method of the motion once, and the bandwidth of each body', () => {
+    const none: number[] = [];
+    const motion = (bandwidthHz: (number | null)[]) => ({
+      ...{ timeS: none, xM: none, yM: none, vxMps: none, vyMps: none, axMps2: none, ayMps2: none },
+      ...{ uXM: none, uYM: none, uVxMps: none, uVyMps: none, uAxMps2: none, uAyMps2: none },
+      ...{ measuredXM: none, measuredYM: none, method: 'central differences', settings: { bandwidthHz } },
+    });
+    const said = summary(sheet, {
+      ...result,
+      motion: { tip: motion([12.345, null, 168.2]), ball: motion([30, 30]) },
+    });
+    const at = said.indexOf('Motion');
+    expect(said.slice(at + 1, at + 4).map((l) => l.trim().replace(/ +/g, ' '))).toEqual([
+      'central differences',
+      'tip bandwidth 12.3 to 168 Hz',
+      'ball bandwidth 30 Hz',
+    ]);
+  });
+
   it('holds each verdict against its limit, with a margin as uncertain as the value', () => {
     expect(
       lines.some((l) =>

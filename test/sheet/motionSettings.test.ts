@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { checkSheet } from '../../analysis/sheet/checkSheet.ts';
 import { motionMethods } from '../../analysis/sheet/motionSettings.ts';
 import { parseSheet } from '../../analysis/sheet/parseSheet.ts';
 import { exampleSheet } from './exampleSheet.ts';
@@ -53,6 +54,15 @@ describe("the sheet's motion section", () => {
     if (sheet.ok) throw new Error('a bad section was taken');
     expect(sheet.problems).toHaveLength(1);
     expect(sheet.problems[0]).toMatch(line);
+  });
+
+  it('is refused before any footage is read where the capture rate is too low for the class', () => {
+    const sheet = parsed({ method: 'channelClass', class: 600 });
+    if (!sheet.ok) throw new Error(sheet.problems.join());
+    const stops = checkSheet(sheet.sheet).filter((f) => f.level === 'stop');
+    expect(stops.map((f) => f.text)).toEqual([
+      'motion: class 600 of SAE J211-1 needs at least 6000 frames per second, and the footage has 1000; class 60 would do.',
+    ]);
   });
 
   it('says that a setting of another method was not used', () => {

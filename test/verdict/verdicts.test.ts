@@ -52,6 +52,23 @@ describe('verdicts', () => {
     expect(outcomeOf({ max: 900, rule: 'simple' }, value, U95).outcome).toBe(simple);
   });
 
+  it('does not pass a greatest value on a value that is only a least one, and says so', () => {
+    const least = { ...peak(880, 10), atLeast: true };
+    const { verdicts: decided, findings } = verdicts([limit({ max: 900 })], [least]);
+    expect(decided[0]).toMatchObject({ outcome: 'undecided', margin: 20 });
+    expect(findings.map((f) => f.code)).toEqual(['limitAtLeast']);
+    expect(findings[0].text).toContain('may be above 900 m/s2');
+    // Above the limit it fails, and a least value that is asked for is kept all the more.
+    expect(verdicts([limit({ max: 800 })], [least])).toMatchObject({
+      verdicts: [{ outcome: 'fail' }],
+      findings: [],
+    });
+    expect(verdicts([limit({ min: 800 })], [least])).toMatchObject({
+      verdicts: [{ outcome: 'pass' }],
+      findings: [],
+    });
+  });
+
   it('gives the margin to the nearest limit, negative outside', () => {
     expect(outcomeOf({ max: 900, min: 100 }, 850, 1).margin).toBe(50);
     expect(outcomeOf({ max: 900, min: 100 }, 130, 1).margin).toBe(30);

@@ -20,10 +20,11 @@ export function smoothedBy(piece: Piece, smoother: LinearSmoother, pilot: Smooth
     noise: Float64Array,
     smoothedPilot: Float64Array,
     exact: Curve,
-  ): Curve => ({
-    value,
-    u: value.map((_, i) => Math.hypot(wider * noise[i], smoothedPilot[i] - exact.value[i])),
-  });
+  ): Curve => {
+    const u = value.map((_, i) => Math.hypot(wider * noise[i], smoothedPilot[i] - exact.value[i]));
+    // A value whose uncertainty is not known is none.
+    return { value: value.map((v, i) => (Number.isNaN(u[i]) ? Number.NaN : v)), u };
+  };
   const jerk =
     values.jerk && uNoise.jerk && ofPilot.jerk && pilot.jerk
       ? curve(values.jerk, uNoise.jerk, ofPilot.jerk, pilot.jerk)
