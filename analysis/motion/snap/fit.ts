@@ -1,0 +1,151 @@
+import { type Cells, cellsOn } from './cells.ts';
+import { valuesAt, variancesAt } from './curves.ts';
+import { type Data, type Density, densityOf, mostProbable, type Prior, posteriorOf } from './density.ts';
+import { evenEdges, gradedEdges, logDensityFor } from './grading.ts';
+import { informationOf, informationOfObservations } from './information.ts';
+import { type Noise, noiseOf } from './noise.ts';
+import type { Scaled } from './scaled.ts';
+
+/** The smoother of a piece with everything that was chosen from the data. */
+export interface SnapFit {
+  readonly data: Data;
+  readonly density: Density;
+  /** Deviation of the log density's change from knot to knot that had the greatest evidence. */
+  readonly change: number;
+  readonly noise: Noise;
+  readonly edf: number;
+}
+
+/** Deviations of the change of the log density over the whole piece among which evidence chooses. */
+const changes = [0.25, 0.8, 2.5, 8];
+const mostKnots = 24;
+/** Points to a knot at least. */
+const pointsPerKnot = 4;
+/** The first smoothing takes positions for so many times less certain, lest it follow what is correlated noise. */
+const firstNoise = 9;
+const mostRounds = 8;
+/** Rounds end when the noise changes by less than this. */
+const settled = 0.03;
+const middleCorner = 12;
+const firstCells = 128;
+/** g, as an upper bound of how fast a body that starts from rest speeds up before anything is known of it [m/s²]. */
+const firstAccelerationMps2 = 10;
+
+/**
+ * Chooses noise and density in turns: smooth, take variance and correlation of the noise from the residuals, smooth again, until the
+ * noise stands still. How freely the density may change is chosen once, by evidence. Cells are laid anew as the density moves.
+ */
+export function snapFit(scaled: Scaled): SnapFit {
+  const { time, u } = scaled;
+  const n = time.length;
+  const knots = Math.max(2, Math.min(mostKnots, Math.floor(n / pointsPerKnot)));
+  const narrowest = scaled.step;
+  const precision = u.reduce((sum, v) => sum + 1 / (v * v), 0);
+  const joined = Uint8Array.from(time, (t, i) => (i > 0 && t - time[i - 1] < 1.5 * narrowest ? 1 : 0));
+
+  let noise: Noise = { variance: firstNoise, correlation: 1 };
+  let accelerationMps2 = firstAccelerationMps2;
+  const dataOn = (edges: Float64Array): Data => {
+    const cells = cellsOn(edges);
+    return {
+      cells,
+      positions: informationOf(cells, time, scaled.value, u),
+      noise: noise.variance * noise.correlation,
+      fixed: informationOfObservations(cells, scaled.rest(accelerationMps2)),
+      startMps2: accelerationMps2,
+    };
+  };
+  const priorWith = (change: number): Prior => ({
+    knots,
+    middle: logDensityFor(middleCorner, precision / (noise.variance * noise.correlation)),
+    change: change / Math.sqrt((knots - 1) / (mostKnots - 1)),
+  });
+  const graded = (at: Float64Array) =>
+    dataOn(gradedEdges(0, at, precision / (noise.variance * noise.correlation), narrowest));
+
+  let at: Float64Array = new Float64Array(knots).fill(constantDensity(dataOn, precision / firstNoise, n));
+  let change = changes[changes.length - 1];
+  let data = graded(at);
+  let edf = 4;
+  for (let round = 0; round < mostRounds; round++) {
+    for (let pass = 0; pass < (round === 0 ? 2 : 1); pass++) {
+      data = graded(at);
+      at = mostProbable(data, priorWith(change), at).at;
+    }
+    data = graded(at);
+    if (round === 1) {
+      const tried = changes.map((c) => {
+        const { at: own } = mostProbable(data, priorWith(c), at);
+        return { c, density: densityOf(graded(own), priorWith(c), own) };
+      });
+      const best = tried.reduce((a, b) => (evidenceOf(b.density) > evidenceOf(a.density) ? b : a));
+      change = best.c;
+      at = best.density?.knots ?? at;
+      data = graded(at);
+    }
+    const now = posteriorOf(data, at);
+    if (!now) throw new RangeError('snapFit: densities beyond double precision');
+    const residual = valuesAt(data.cells, now.coefficients, time, 0).map(
+      (v, i) => (scaled.value[i] - v) / u[i],
+    );
+    edf = effectiveParameters(data.cells, now.covariance, time, u, data.noise);
+    const next = noiseOf(residual, joined, edf);
+    accelerationMps2 = startOf(scaled, data.cells, now.coefficients, now.covariance);
+    const moved = Math.abs(Math.log((next.variance * next.correlation) / data.noise));
+    noise = next;
+    if (round > 1 && moved < settled) break;
+  }
+  data = graded(at);
+  const density = densityOf(data, priorWith(change), at);
+  if (!density) throw new RangeError('snapFit: densities beyond double precision');
+  return { data, density, change, noise, edf };
+}
+
+function evidenceOf(density: Density | null): number {
+  return density ? density.logEvidence : Number.NEGATIVE_INFINITY;
+}
+
+/** Trace of the matrix that makes smoothed positions from measured ones. */
+function effectiveParameters(
+  cells: Cells,
+  covariance: Float64Array,
+  time: Float64Array,
+  u: Float64Array,
+  noise: number,
+): number {
+  const variance = variancesAt(cells, covariance, time, 0);
+  let sum = 0;
+  for (let i = 0; i < time.length; i++) sum += variance[i] / (u[i] * u[i] * noise);
+  return sum;
+}
+
+/** Size of the acceleration where the piece starts, with its uncertainty [m/s²]. */
+function startOf(scaled: Scaled, cells: Cells, coefficients: Float64Array, covariance: Float64Array): number {
+  const zero = Float64Array.of(0);
+  const unit = scaled.unitM / scaled.spanS ** 2;
+  const a = unit * valuesAt(cells, coefficients, zero, 2)[0] + scaled.cubic(0, 2);
+  return Math.hypot(a, unit * Math.sqrt(variancesAt(cells, covariance, zero, 2)[0]));
+}
+
+/** Best density that is the same everywhere, on even cells that are made finer as long as the best one asks for it. */
+function constantDensity(
+  dataOn: (edges: Float64Array) => Data,
+  pointsPerVariance: number,
+  n: number,
+): number {
+  for (let count = Math.min(n, firstCells); ; count *= 4) {
+    const data = dataOn(evenEdges(0, Math.max(24, count)));
+    const largest = Math.max(24, count) / 2;
+    let best = Number.NEGATIVE_INFINITY;
+    let bestCorner = largest;
+    for (let corner = 3; corner <= largest; corner *= 1.3) {
+      const value = logDensityFor(corner, pointsPerVariance);
+      const found = posteriorOf(data, Float64Array.of(value, value));
+      if (found && found.logEvidence > best) {
+        best = found.logEvidence;
+        bestCorner = corner;
+      }
+    }
+    if (bestCorner < largest / 1.4 || count >= n) return logDensityFor(bestCorner, pointsPerVariance);
+  }
+}
