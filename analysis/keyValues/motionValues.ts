@@ -5,6 +5,7 @@ import type { Events } from './events.ts';
 import { intervalValues } from './intervalValues.ts';
 import { leadStart } from './leadStart.ts';
 import type { NumbersInput } from './numbersInput.ts';
+import { peakJerk } from './peakJerk.ts';
 import { peaksOf } from './peaks.ts';
 import { speedAtHeight } from './speedAtHeight.ts';
 
@@ -30,6 +31,8 @@ export function motionValues(
     );
     keyValues.push(...peaks.keyValues);
     findings.push(...peaks.findings);
+    const jerk = peakJerk(tip.motion, tip.release.timeS, extension?.timeS ?? lastS, common);
+    if (jerk) keyValues.push(jerk);
   }
   if (tip && ball && fall) {
     const untilS = Math.min(extension?.timeS ?? Number.POSITIVE_INFINITY, fall.lastS);

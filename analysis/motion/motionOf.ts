@@ -35,6 +35,7 @@ export function motionOf(
   const series = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
   const u = { x: blank(), vx: blank(), ax: blank(), y: blank(), vy: blank(), ay: blank() };
   const bandwidthHz = blank();
+  const jerkY = { value: blank(), u: blank() };
   const settings: { fromS: number; toS: number; x: unknown; y: unknown }[] = [];
   const release = breaks.find((b) => b.kind === 'release');
 
@@ -51,6 +52,10 @@ export function motionOf(
       down.bandwidthHz.map((hz) => Math.min(hz, 0.5 / frameTimeS)),
       range.from,
     );
+    if (down.jerk) {
+      jerkY.value.set(down.jerk.value, range.from);
+      jerkY.u.set(down.jerk.u, range.from);
+    }
     settings.push({
       fromS: track.timeS[range.from],
       toS: track.timeS[range.to - 1],
@@ -89,6 +94,7 @@ export function motionOf(
       },
     },
     bandwidthHz: Float64Array.from(pick(bandwidthHz)),
+    jerkY: { value: Float64Array.from(pick(jerkY.value)), u: Float64Array.from(pick(jerkY.u)) },
   };
 }
 

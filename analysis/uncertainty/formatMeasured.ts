@@ -1,7 +1,7 @@
-const unitSigns: Readonly<Record<string, string>> = { 'm/s2': 'm/s²', '1': '' };
+const unitSigns: Readonly<Record<string, string>> = { 'm/s2': 'm/s²', 'm/s3': 'm/s³', '1': '' };
 
 /** A unit as it is printed: `m/s2` of the contract is `m/s²`; the unit one has no sign. */
-function unitSign(unit: string): string {
+export function unitSign(unit: string): string {
   return unitSigns[unit] ?? unit;
 }
 

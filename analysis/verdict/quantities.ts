@@ -46,6 +46,11 @@ export const quantities: readonly Quantity[] = [
     meaning: 'instant at which the reference body was let go, on the clock of the frames',
   },
   {
+    quantity: 'tip.peakJerk',
+    unit: 'm/s3',
+    meaning: 'largest rate of change of the acceleration along the plumb line between release and extension',
+  },
+  {
     quantity: 'tip.leadTime',
     unit: 's',
     meaning: 'time from release until the tip is significantly ahead of the reference body',

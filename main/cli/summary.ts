@@ -1,6 +1,6 @@
 import type { Finding, Result } from '../../analysis/sheet/result.ts';
 import type { Sheet, SheetLimit } from '../../analysis/sheet/sheet.ts';
-import { formatMeasured } from '../../analysis/uncertainty/formatMeasured.ts';
+import { formatMeasured, unitSign } from '../../analysis/uncertainty/formatMeasured.ts';
 import { table } from './table.ts';
 
 /** Wide enough for the tables, narrow enough to read. */
@@ -89,7 +89,7 @@ function limitText(limit: SheetLimit | undefined): string {
     limit.min === undefined ? '' : `min ${limit.min}`,
     limit.max === undefined ? '' : `max ${limit.max}`,
   ].filter((side) => side !== '');
-  return `${sides.join(', ')} ${limit.unit.replace('m/s2', 'm/s²')}`;
+  return `${sides.join(', ')} ${unitSign(limit.unit)}`.trimEnd();
 }
 
 function wrapped(text: string, width: number): string[] {

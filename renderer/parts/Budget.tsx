@@ -1,6 +1,6 @@
 import type { KeyValue } from '../../analysis/sheet/result.ts';
+import { unitSign } from '../../analysis/uncertainty/formatMeasured.ts';
 import { quantityMeaning } from './quantityMeaning.ts';
-import { siUnit } from './siUnit.ts';
 
 /** The uncertainty contributions behind a value, the largest first, with each one's share of the variance. */
 export function Budget({ keyValue }: { readonly keyValue: KeyValue }) {
@@ -19,7 +19,7 @@ export function Budget({ keyValue }: { readonly keyValue: KeyValue }) {
           <tr>
             <th scope="col">Source</th>
             <th scope="col">
-              <i>u</i> [{siUnit(unit) || '1'}]
+              <i>u</i> [{unitSign(unit) || '1'}]
             </th>
             <th scope="col">Share</th>
           </tr>

@@ -1,8 +1,8 @@
 import type { Verdict } from '../../analysis/sheet/result.ts';
+import { unitSign } from '../../analysis/uncertainty/formatMeasured.ts';
 import type { DraftLimit } from '../state/draft.ts';
 import { Outcome } from './Outcome.tsx';
 import { QuantityName } from './QuantityName.tsx';
-import { siUnit } from './siUnit.ts';
 
 export function Verdicts({
   verdicts,
@@ -29,7 +29,7 @@ export function Verdicts({
               <QuantityName quantity={v.quantity} />
             </th>
             <td class="figures">{limitText(limits[i])}</td>
-            <td class="figures">{v.margin === null ? '–' : `${marginText(v.margin)} ${siUnit(v.unit)}`}</td>
+            <td class="figures">{v.margin === null ? '–' : `${marginText(v.margin)} ${unitSign(v.unit)}`}</td>
             <td>
               <Outcome outcome={v.outcome} /> <span class="hint">{v.rule}</span>
             </td>
@@ -42,7 +42,7 @@ export function Verdicts({
 
 function limitText(limit: DraftLimit | undefined): string {
   if (!limit) return '';
-  const unit = siUnit(limit.unit);
+  const unit = unitSign(limit.unit);
   const bounds = [
     limit.min === undefined ? '' : `≥ ${limit.min} ${unit}`,
     limit.max === undefined ? '' : `≤ ${limit.max} ${unit}`,

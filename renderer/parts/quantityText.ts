@@ -7,6 +7,7 @@ const units = {
   kg: { kg: 1, g: 1e-3, mg: 1e-6 },
   Pa: { Pa: 1, hPa: 1e2, kPa: 1e3, mbar: 1e2 },
   'm/s²': { 'm/s²': 1, 'm/s2': 1 },
+  'm/s³': { 'm/s³': 1, 'm/s3': 1 },
   '°': { '°': 1, deg: 1 },
   '°C': { '°C': 1, C: 1 },
   px: { px: 1 },

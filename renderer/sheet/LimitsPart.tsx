@@ -7,6 +7,7 @@ import { Part } from './Part.tsx';
 
 const fieldUnits: Readonly<Record<string, FieldUnit>> = {
   'm/s2': 'm/s²',
+  'm/s3': 'm/s³',
   m: 'm',
   s: 's',
   '1': '1',

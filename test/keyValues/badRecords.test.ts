@@ -40,6 +40,7 @@ describe('a record that lacks something gives its finding and no value that rest
         'tip.releaseTime',
         'tip.peakSpeed',
         'tip.peakAcceleration',
+        'tip.peakJerk',
         ...ofExtension,
       ].sort(),
     );

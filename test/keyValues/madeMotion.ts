@@ -34,6 +34,7 @@ export function madeMotion(
       settings: {},
     },
     bandwidthHz: Float64Array.from(all(bandwidthHz)),
+    jerkY: { value: Float64Array.from(all(Number.NaN)), u: Float64Array.from(all(Number.NaN)) },
   };
 }
 

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { peakJerk } from '../../analysis/keyValues/peakJerk.ts';
 import { peaksOf } from '../../analysis/keyValues/peaks.ts';
 import { peakWidth } from '../../analysis/keyValues/peakWidth.ts';
 import { commonAt, madeMotion } from './madeMotion.ts';
@@ -72,5 +73,27 @@ describe('peakWidth', () => {
     expect(peakWidth(timeS, [0, 1, 2, 4, 3, 2, 0], 3)).toEqual({ halfWidthS: 1.5, sides: 2 });
     expect(peakWidth(timeS.slice(0, 4), [0, 0, 2, 4], 3)).toEqual({ halfWidthS: 1, sides: 1 });
     expect(peakWidth(timeS.slice(0, 3), [3, 4, 3], 1)).toEqual({ halfWidthS: 1, sides: 0 });
+  });
+});
+
+describe('the peak of the jerk', () => {
+  const made = madeMotion(1000, 0.3, pulse(500, 0.2, 0.02));
+  const with_ = (u: number) => ({
+    ...made,
+    jerkY: {
+      value: Float64Array.from(made.motion.timeS, (t) => -1000 * Math.sin(20 * t)),
+      u: Float64Array.from(made.motion.timeS, () => u),
+    },
+  });
+
+  it('is the largest that is more than twice its uncertainty', () => {
+    const jerk = peakJerk(with_(10), 0, 0.25, commonAt(1000));
+    expect(jerk?.value).toBeCloseTo(1000 * Math.abs(Math.sin(20 * 0.236)), 0);
+    expect(jerk?.unit).toBe('m/s3');
+    expect(peakJerk(with_(600), 0, 0.25, commonAt(1000))).toBeNull();
+  });
+
+  it('is not given where the method has none', () => {
+    expect(peakJerk(made, 0, 0.25, commonAt(1000))).toBeNull();
   });
 });
