@@ -3,6 +3,7 @@ import { BodiesPart } from './BodiesPart.tsx';
 import { ClockPart } from './ClockPart.tsx';
 import { FootagePart } from './FootagePart.tsx';
 import { LimitsPart } from './LimitsPart.tsx';
+import { MotionPart } from './MotionPart.tsx';
 import { ScalePart } from './ScalePart.tsx';
 import { SitePart } from './SitePart.tsx';
 import { TetherPart } from './TetherPart.tsx';
@@ -21,6 +22,7 @@ export function SheetForm() {
       <SitePart />
       <BodiesPart />
       <TetherPart />
+      <MotionPart />
       <LimitsPart />
     </form>
   );

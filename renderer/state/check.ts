@@ -53,7 +53,7 @@ function bodyIndexOfDraft(path: string): string {
   return path.replace(/^bodies\[\d+\]/, `bodies[${indices[Number(found[1])] ?? found[1]}]`);
 }
 
-export const parts = ['footage', 'clock', 'scale', 'site', 'bodies', 'tether', 'limits'] as const;
+export const parts = ['footage', 'clock', 'scale', 'site', 'bodies', 'tether', 'motion', 'limits'] as const;
 export type PartName = (typeof parts)[number];
 export type PartState = 'empty' | 'unsettled' | 'settled' | 'stale';
 
@@ -64,6 +64,7 @@ const fieldsOf: Readonly<Record<PartName, (draft: Draft) => unknown>> = {
   site: (d) => [d.siteBy, d.site, d.ambient],
   bodies: (d) => d.bodies,
   tether: (d) => d.tether,
+  motion: (d) => d.motion,
   limits: (d) => d.limits,
 };
 const roots: Readonly<Record<PartName, readonly string[]>> = {
@@ -73,6 +74,7 @@ const roots: Readonly<Record<PartName, readonly string[]>> = {
   site: ['site', 'ambient'],
   bodies: ['bodies', 'body'],
   tether: ['tether'],
+  motion: ['motion'],
   limits: ['limits'],
 };
 /** Parts whose marks belong to the picture: they are looked at again when the footage changes. */
@@ -119,7 +121,7 @@ export function confirmPart(name: PartName): void {
 }
 
 function isEmpty(name: PartName): boolean {
-  const { footage, clock, camera, scale, site, ambient, bodies, tether, limits } = draft.value;
+  const { footage, clock, camera, scale, site, ambient, bodies, tether, motion, limits } = draft.value;
   switch (name) {
     case 'footage':
       return footage.path === undefined;
@@ -133,6 +135,8 @@ function isEmpty(name: PartName): boolean {
       return !bodies.some(isPlaced);
     case 'tether':
       return nothing(tether);
+    case 'motion':
+      return motion === undefined;
     case 'limits':
       return limits.length === 0;
   }

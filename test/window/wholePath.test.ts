@@ -197,6 +197,23 @@ describe('a drop in the window', () => {
       );
   });
 
+  it('takes a prescribed method, says at once when the frame rate is too low for it, and goes back to the default', async () => {
+    const { page } = window;
+    const part = page
+      .getByRole('region', { name: 'Motion', exact: false })
+      .filter({ has: page.locator('h2') });
+    await part.getByLabel('Velocity and acceleration by').selectOption('channelClass');
+    await part.locator('[id="field-motion.class"]').selectOption('600');
+    await part.getByText(/class 600 of SAE J211-1 needs at least 6000 frames per second/).waitFor();
+    await part.getByLabel('Velocity and acceleration by').selectOption('localPolynomial');
+    await fill(page, 'motion.windowFrames', 12);
+    await part.getByText(/must be an odd number of frames/).waitFor();
+    await fill(page, 'motion.windowFrames', 21);
+    expect(await part.locator('.part-state').textContent()).toContain('settled');
+    await part.getByLabel('Velocity and acceleration by').selectOption('adaptive');
+    expect(await part.locator('.part-state').textContent()).toContain('empty');
+  });
+
   it('reduces, with progress, and draws the lanes', async () => {
     const { page } = window;
     await page.keyboard.press('Control+Enter');
