@@ -1,7 +1,7 @@
 import type { Motion } from '../sheet/result.ts';
 
 /** Standard uncertainty of a vector's magnitude from those of its components. */
-export function uOfMagnitude(x: number, y: number, ux: number, uy: number): number {
+function uOfMagnitude(x: number, y: number, ux: number, uy: number): number {
   const size = Math.hypot(x, y);
   return size > 0 ? Math.hypot((x / size) * ux, (y / size) * uy) : Math.hypot(ux, uy);
 }

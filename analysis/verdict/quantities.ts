@@ -58,7 +58,7 @@ export const quantities: readonly Quantity[] = [
 ];
 
 /** Quantities of which a sheet may ask for several: its motion section numbers them from 1 (`tip.meanAcceleration.1`). */
-export const numberedQuantities: readonly Quantity[] = (['tip', 'ball'] as const).flatMap((body) => [
+const numberedQuantities: readonly Quantity[] = (['tip', 'ball'] as const).flatMap((body) => [
   {
     quantity: `${body}.meanAcceleration`,
     unit: 'm/s2',
