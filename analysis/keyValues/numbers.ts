@@ -1,8 +1,10 @@
 import { adaptive } from '../motion/adaptive.ts';
+import type { BodyMotion } from '../motion/bodyMotion.ts';
 import type { Break } from '../motion/breaks.ts';
 import { motionOf } from '../motion/motionOf.ts';
 import { methodOf } from '../motion/prescribed/methodOf.ts';
 import { methodProblem } from '../motion/prescribed/methodProblem.ts';
+import { simultaneousFactor } from '../motion/simultaneousBand.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
 import type { Finding, KeyValue, Motion, Theory } from '../sheet/result.ts';
 import type { Sheet, SheetBody } from '../sheet/sheet.ts';
@@ -70,11 +72,18 @@ export function numbers(input: NumbersInput): Numbers {
   });
 
   return {
-    motion: Object.fromEntries(Array.from(motions, ([id, m]) => [id, m.motion])),
+    motion: Object.fromEntries(Array.from(motions, ([id, m]) => [id, withBand(m, sheet.motion)])),
     keyValues,
     theory,
     findings,
   };
+}
+
+/** The motion for the result, with the factor of a band for the whole curve where the sheet asks for it. */
+function withBand({ motion, bandwidthHz }: BodyMotion, asked: Sheet['motion']): Motion {
+  if (!asked?.simultaneousBands) return motion;
+  const factor = simultaneousFactor(motion.timeS, bandwidthHz);
+  return { ...motion, settings: { ...motion.settings, simultaneousFactor95: factor } };
 }
 
 function bodyOf(sheet: Sheet, track: WorldTrack): SheetBody {

@@ -20,7 +20,7 @@ const wanted = {
   intervals: z.array(interval).max(20).optional(),
   /** Heights in the world (y up, origin as stated) at which the speed of tip and ball is wanted. */
   heightsM: z.array(finite).max(20).optional(),
-  /** Bands that hold the whole curve at once with 95 %, besides the intervals of each instant. */
+  /** Also the factor on u of a band that holds the whole acceleration curve at once with 95 % (`simultaneousFactor95` of the motion's settings). */
   simultaneousBands: z.boolean().optional(),
 };
 

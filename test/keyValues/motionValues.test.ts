@@ -83,6 +83,16 @@ describe('the motion section of a sheet', () => {
     expect(unitOfQuantity('tip.meanAcceleration.0')).toBeNull();
   });
 
+  it('gets the factor of a band for the whole curve when it asks for it, and not otherwise', () => {
+    const factorOf = (simultaneousBands: boolean) => {
+      const settings = motionSettingsSchema.parse({ method: 'quinticSpline', simultaneousBands });
+      const { motion } = numbers({ ...input, sheet: { ...input.sheet, motion: settings } });
+      return motion.tip.settings.simultaneousFactor95;
+    };
+    expect(factorOf(true)).toBeGreaterThan(2.4);
+    expect(factorOf(false)).toBeUndefined();
+  });
+
   it('has its method used', () => {
     const settings = motionSettingsSchema.parse({ method: 'localPolynomial', degree: 4, windowFrames: 15 });
     const { motion } = numbers({ ...input, sheet: { ...input.sheet, motion: settings } });
