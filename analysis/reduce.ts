@@ -4,6 +4,8 @@ import { asGravity, fallAsBar, pixelBar, withoutGravityCheck } from './gravity/f
 import { numbers } from './keyValues/numbers.ts';
 import type { WorldTrack } from './motion/worldTrack.ts';
 import { type Calibration, calibrate } from './scale/calibrate.ts';
+import type { PictureSize } from './scale/lensOf.ts';
+import type { PixelPoint } from './scale/spaces.ts';
 import { type Settled, settle } from './sheet/assumptions.ts';
 import { checkSheet } from './sheet/checkSheet.ts';
 import type { BodyInFrame, Finding, Result, ResultFrame } from './sheet/result.ts';
@@ -32,10 +34,13 @@ export function reduce(input: ReduceInput): Result {
 
   const gravity = siteGravity(sheet.site);
   const origin = originOf(sheet, tracks);
+  const picture = input.inputs.footage;
   const tracksBy = (calibration: Calibration) =>
     tracks.map((track) => worldTrack(track, sheet, timeS, rowTimeS, calibration));
-  const fromGravity = needsGravity(sheet) ? scaleOfFall(sheet, settled, origin, gravity, tracksBy) : null;
-  const calibration = calibrate(sheet, fromGravity?.settled ?? settled, origin);
+  const fromGravity = needsGravity(sheet)
+    ? scaleOfFall(sheet, settled, { origin, picture }, gravity, tracksBy)
+    : null;
+  const calibration = calibrate(sheet, fromGravity?.settled ?? settled, origin, picture);
   // A fall that gives no scale leaves nothing in metres: no track is better than one in unknown units.
   const worldTracks = fromGravity?.found === false ? [] : tracksBy(calibration);
 
@@ -96,12 +101,14 @@ function needsGravity({ scale }: Sheet): boolean {
 function scaleOfFall(
   sheet: Sheet,
   settled: Settled,
-  origin: { x: number; y: number },
+  { origin, picture }: { origin: { x: number; y: number }; picture: PictureSize },
   gravity: LocalGravity,
   tracksBy: (calibration: Calibration) => WorldTrack[],
 ): { settled: Settled; finding: Finding; found: boolean } {
   const inPlane = { ...settled, planeOffsetM: 0, uPlaneOffsetM: 0 };
-  const byPixels = calibrate(sheet, { ...inPlane, bars: [pixelBar] }, origin);
+  // In pixels the stated distance of the camera says nothing: it is taken as a multiple of the picture's height.
+  const inPixels = { ...sheet, scale: { ...sheet.scale, cameraDistanceM: undefined } };
+  const byPixels = calibrate(inPixels, { ...inPlane, bars: [pixelBar] }, origin, picture);
   const fallPx = tracksBy(byPixels).find((t) => t.role === 'reference');
   const found = fallPx && fallAsBar(fallPx, byPixels.metrePerPx, sheet, settled, gravity);
   if (found) return { settled: { ...inPlane, bars: [found.bar] }, finding: found.finding, found: true };
@@ -153,12 +160,20 @@ function worldTrack(
   const used = Array.from(track.frame.keys()).filter(
     (i) => isData(track.state[i]) && !Number.isNaN(camera(i).xPx),
   );
-  const points = used.map((i) =>
-    calibration.toWorld({
+  const onRig = used.map(
+    (i): PixelPoint => ({
       space: 'pixel',
       xPx: track.xPx[i] - camera(i).xPx,
       yPx: track.yPx[i] - camera(i).yPx,
     }),
+  );
+  const points = onRig.map(calibration.toWorld);
+  const us = used.map((i, k) =>
+    calibration.uWorld(
+      onRig[k],
+      Math.hypot(track.uXPx[i], camera(i).uPx),
+      Math.hypot(track.uYPx[i], camera(i).uPx),
+    ),
   );
   return {
     bodyId: body.id,
@@ -167,8 +182,8 @@ function worldTrack(
     timeS: Float64Array.from(used, (i) => rowTime(timeS[track.frame[i]], track.yPx[i], rowTimeS)),
     xM: Float64Array.from(points, (p) => p.xM),
     yM: Float64Array.from(points, (p) => p.yM),
-    uXM: Float64Array.from(used, (i) => Math.hypot(track.uXPx[i], camera(i).uPx) * calibration.metrePerPx),
-    uYM: Float64Array.from(used, (i) => Math.hypot(track.uYPx[i], camera(i).uPx) * calibration.metrePerPx),
+    uXM: Float64Array.from(us, (u) => u.uXM),
+    uYM: Float64Array.from(us, (u) => u.uYM),
   };
 }
 

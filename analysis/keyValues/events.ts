@@ -2,6 +2,7 @@ import { type BallFall, ballFall } from '../motion/ballFall.ts';
 import { type Extension, extensionOf } from '../motion/extension.ts';
 import { type Release, releaseOf } from '../motion/release.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
+import { alongFall } from '../scale/displacement.ts';
 import type { Finding, KeyValue } from '../sheet/result.ts';
 import { airOf } from '../theory/air.ts';
 import { measured } from '../uncertainty/measured.ts';
@@ -56,7 +57,13 @@ export function eventsOf(input: NumbersInput): Events {
       airOf(sheet.ambient),
     );
     if (fall) {
-      const g = gravityOf(fall, common);
+      const { firstS, lastS } = fall;
+      const used = Array.from(ball.timeS.keys()).filter(
+        (i) => ball.timeS[i] >= firstS && ball.timeS[i] <= lastS,
+      );
+      const of = (values: Float64Array) => used.map((i) => values[i]);
+      const way = { timeS: of(ball.timeS), xM: of(ball.xM), yM: of(ball.yM) };
+      const g = gravityOf(fall, { ...common, length: alongFall(common.length, way) });
       keyValues.push(g);
       findings.push(gravityCheck(g, gravity), ...dragFindings(fall));
     } else findings.push(fallTooShort);

@@ -5,6 +5,7 @@ import {
   peakAccelerationError,
   safeFramesInHalfWidth,
 } from '../planner/peakChart.ts';
+import { atPlace } from '../scale/displacement.ts';
 import type { Finding, KeyValue, Motion } from '../sheet/result.ts';
 import { measured } from '../uncertainty/measured.ts';
 import { accelerationAt, speedAt } from './alongMotion.ts';
@@ -51,6 +52,7 @@ function peakSpeed(motion: Motion, { inside, until }: Stretch, common: Common): 
   const speed = (i: number) => speedAt(motion, i).value;
   const s = largest(speed, inside);
   const { value, u } = speedAt(motion, s);
+  const there = atPlace(common.length, { xM: motion.xM[s], yM: motion.yM[s] });
   return measured(
     'tip.peakSpeed',
     value,
@@ -58,7 +60,7 @@ function peakSpeed(motion: Motion, { inside, until }: Stretch, common: Common): 
     [
       { source: 'positions and smoothing', u },
       { source: 'between frames', u: betweenFrames(speed, s, inside) },
-      ...commonSources(common, value, { length: 1, time: -1 }),
+      ...commonSources({ ...common, length: there }, value, { length: 1, time: -1 }),
     ],
     { definition: `largest speed at a frame between release and ${until}` },
   );

@@ -19,6 +19,15 @@ export interface WorldTrack {
 export interface RelativeSource {
   readonly source: string;
   readonly uRel: number;
+  /**
+   * For a source that does not stretch all lengths alike: where a place goes with each independent part of it at +1 standard
+   * uncertainty; uRel then holds from the highest to the lowest place. `analysis/scale/displacement.ts` says what it makes of a
+   * value elsewhere.
+   */
+  readonly moves?: readonly ((place: { readonly xM: number; readonly yM: number }) => {
+    readonly xM: number;
+    readonly yM: number;
+  })[];
 }
 
 /** What all positions and times of a reduction share: it does not average out over frames. */

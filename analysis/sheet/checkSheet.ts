@@ -1,4 +1,5 @@
 import { rateProblem } from '../motion/prescribed/methodProblem.ts';
+import { scaleProblems } from '../scale/scaleProblems.ts';
 import { quantities, unitOfQuantity } from '../verdict/quantities.ts';
 import { sameUnit } from '../verdict/sameUnit.ts';
 import type { Finding } from './result.ts';
@@ -71,6 +72,7 @@ export function checkSheet(sheet: Sheet): Finding[] {
       );
     }
   });
+  findings.push(...scaleProblems(sheet));
   if (scale.plumb && Math.hypot(scale.plumb.b.x - scale.plumb.a.x, scale.plumb.b.y - scale.plumb.a.y) < 2) {
     stop(
       'plumbTooShort',

@@ -51,13 +51,24 @@ const clock = z.discriminatedUnion('kind', [
 ]);
 
 /** Brown radial model: undistorted = centre + (distorted - centre) (1 + k1 r² + k2 r⁴), r = distance / radiusPx. */
-const lens = z.object({ k1: finite, k2: finite.default(0), centre: pixelPoint, radiusPx: positive });
+const lens = z.object({
+  k1: finite,
+  k2: finite.default(0),
+  centre: pixelPoint,
+  radiusPx: positive,
+  uK1: notNegative.optional(),
+  uK2: notNegative.optional(),
+  /** Correlation of k1 and k2. */
+  rK1K2: finite.min(-1).max(1).optional(),
+});
 
 const camera = z.object({
   exposureS: notNegative.optional(),
   /** Delay between the exposures of neighbouring sensor rows; 0 for a global shutter. */
   rowTimeS: finite.optional(),
   lens: lens.optional(),
+  /** Places along edges that are straight in truth, three or more to each: the lens is estimated from them where none is given. */
+  straightLines: z.array(z.array(pixelPoint).min(3)).min(1).optional(),
 });
 
 const bar = z.object({
@@ -67,18 +78,44 @@ const bar = z.object({
   uLengthM: notNegative.optional(),
   /** Standard uncertainty of one mark along each axis. */
   uMarkPx: notNegative.optional(),
+  /** Find the centres of the targets at the marks in the first frame; their uncertainty then comes from the picture. */
+  refine: z.boolean().optional(),
+});
+
+const fiducial = z.object({
+  x: finite,
+  y: finite,
+  worldXM: finite,
+  worldYM: finite,
+  /** Standard uncertainty of the mark along each axis. */
+  uMarkPx: notNegative.optional(),
+  /** Standard uncertainty of its known position along each axis. */
+  uWorldM: notNegative.optional(),
+  /** Find the centre of the target at the mark in the first frame. */
+  refine: z.boolean().optional(),
 });
 
 const scale = z.object({
   bars: z.array(bar).default([]),
   plumb: z.object({ a: pixelPoint, b: pixelPoint }).optional(),
-  fiducials: z.array(z.object({ x: finite, y: finite, worldXM: finite, worldYM: finite })).optional(),
+  fiducials: z.array(fiducial).optional(),
   /** No bar was filmed: take the scale at which the reference body falls with local gravity. The gravity check is lost. */
   fromGravity: z.literal(true).optional(),
   /** How far the bodies' plane is in front of (+) the plane of the scale bar, towards the camera. */
   planeOffsetM: finite.optional(),
   uPlaneOffsetM: notNegative.optional(),
   cameraDistanceM: positive.optional(),
+  /**
+   * How far the camera looks down (+) on the plane of the fall: its upper end is then nearer. With fiducials, which show the
+   * camera's own pitch: how far their plane leans back from the plane of the fall.
+   */
+  pitchDeg: finite.min(-30).max(30).optional(),
+  uPitchDeg: notNegative.optional(),
+  /** How far the camera is turned so that the left side of the plane is nearer (+). */
+  yawDeg: finite.min(-30).max(30).optional(),
+  uYawDeg: notNegative.optional(),
+  /** Find the pitch from the reference body's fall: it leaves a mark of its own there. Needs cameraDistanceM; drag must be known. */
+  pitchFromFall: z.literal(true).optional(),
 });
 
 const site = z.union([
@@ -167,4 +204,5 @@ export type Sheet = z.output<typeof sheetSchema>;
 export type SheetInput = z.input<typeof sheetSchema>;
 export type SheetBody = Sheet['bodies'][number];
 export type SheetBar = Sheet['scale']['bars'][number];
+export type SheetFiducial = NonNullable<Sheet['scale']['fiducials']>[number];
 export type SheetLimit = Sheet['limits'][number];

@@ -18,7 +18,7 @@ import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
 import { Refusal } from '../refusal.ts';
 import { doubledFindings, saturationFindings } from './followFindings.ts';
 import { startPace } from './pace.ts';
-import { noiseOrRefuse, refuseMarksOutside } from './placing.ts';
+import { noiseOrRefuse, refuseMarksOutside, refuseUnfitLens } from './placing.ts';
 import type { Progress } from './progress.ts';
 
 export interface Followed {
@@ -76,7 +76,10 @@ export async function followBodies(
   const index = await source.index({
     signal,
     onFrame({ n, picture }, expectedCount) {
-      if (n === firstFrame) refuseMarksOutside(sheet, picture);
+      if (n === firstFrame) {
+        refuseMarksOutside(sheet, picture);
+        refuseUnfitLens(sheet, picture);
+      }
       if (n >= firstFrame && n <= wantedLast) {
         sampling.push(n - firstFrame, picture);
         for (const run of runs) watch(run, n, picture);

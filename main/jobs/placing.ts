@@ -1,3 +1,4 @@
+import { lensProblem } from '../../analysis/scale/scaleProblems.ts';
 import type { Sheet } from '../../analysis/sheet/sheet.ts';
 import type { PlacedBody } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
@@ -29,6 +30,11 @@ export function noiseOrRefuse(body: PlacedBody, picture: Picture): number {
   );
 }
 
+export function refuseUnfitLens(sheet: Sheet, picture: Picture): void {
+  const problem = lensProblem(sheet, picture);
+  if (problem) throw new Refusal(problem.code, 2, problem.text);
+}
+
 export function refuseMarksOutside(sheet: Sheet, picture: Picture): void {
   const marks = [
     ...sheet.bodies.flatMap((b) => [
@@ -50,6 +56,9 @@ export function refuseMarksOutside(sheet: Sheet, picture: Picture): void {
         ]
       : []),
     ...(sheet.scale.fiducials ?? []).map((f, i) => ({ name: `scale.fiducials[${i}]`, x: f.x, y: f.y })),
+    ...(sheet.camera?.straightLines ?? []).flatMap((line, i) =>
+      line.map((p, k) => ({ name: `camera.straightLines[${i}][${k}]`, ...p })),
+    ),
   ];
   const outside = marks.filter(
     (m) => m.x < -0.5 || m.y < -0.5 || m.x > picture.widthPx - 0.5 || m.y > picture.heightPx - 0.5,

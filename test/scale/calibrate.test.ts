@@ -10,7 +10,7 @@ function calibrated(change: (sheet: SheetInput) => void = () => {}) {
   const sheet = exampleSheet();
   change(sheet);
   const parsed = sheetSchema.parse(sheet);
-  return calibrate(parsed, settle(parsed), { x: 100, y: 200 });
+  return calibrate(parsed, settle(parsed), { x: 100, y: 200 }, { widthPx: 640, heightPx: 800 });
 }
 const at = (xPx: number, yPx: number) => ({ space: 'pixel', xPx, yPx }) as const;
 

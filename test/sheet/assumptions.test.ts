@@ -23,6 +23,10 @@ describe('settle', () => {
       'uMarkPx',
       'scale.planeOffsetM',
       'scale.cameraDistanceM',
+      'scale.uPlaneOffsetM',
+      'scale.uPitchDeg',
+      'scale.uYawDeg',
+      'camera.lens',
       'scale.plumb',
     ]) {
       expect(texts).toContain(field);

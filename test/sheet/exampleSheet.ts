@@ -6,7 +6,11 @@ export function exampleSheet(): SheetInput & Record<string, unknown> {
     schema: 'tetherfall/sheet/1',
     footage: { path: 'drop.mp4', firstFrame: 0, lastFrame: 412 },
     clock: { kind: 'captureRate', captureRateHz: 1000, uCaptureRateRel: 1e-5 },
-    camera: { exposureS: 0.0002, rowTimeS: 0 },
+    camera: {
+      exposureS: 0.0002,
+      rowTimeS: 0,
+      lens: { k1: 0, k2: 0, centre: { x: 319.5, y: 399.5 }, radiusPx: 512, uK1: 0.0003 },
+    },
     scale: {
       bars: [
         { a: { x: 60.2, y: 40 }, b: { x: 60.4, y: 741.3 }, lengthM: 0.7, uLengthM: 0.0005, uMarkPx: 0.3 },
@@ -15,6 +19,8 @@ export function exampleSheet(): SheetInput & Record<string, unknown> {
       planeOffsetM: 0,
       uPlaneOffsetM: 0.002,
       cameraDistanceM: 3,
+      uPitchDeg: 0.1,
+      uYawDeg: 0.3,
     },
     site: { gMps2: 9.8123, uGMps2: 0.0001 },
     ambient: { temperatureC: 21, pressurePa: 100800, relativeHumidity: 0.45 },
