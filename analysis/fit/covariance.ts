@@ -33,7 +33,7 @@ export function covarianceOf(jacobian: readonly Float64Array[], free: ReadonlySe
 }
 
 /** Singular values of derivatives whose columns were brought to unit length, largest first. */
-export function scaledSingular(columns: readonly Float64Array[]): {
+function scaledSingular(columns: readonly Float64Array[]): {
   readonly values: readonly number[];
   readonly vectors: Matrix;
   readonly scale: readonly number[];

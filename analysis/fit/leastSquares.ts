@@ -78,19 +78,35 @@ function descend(problem: Problem, mostSteps: number, initialDamping: number): S
       at.residuals,
     );
     for (;;) {
-      const step = dampedStep(r, q, free, scale, damping);
       const trial = parameters.slice();
-      free.forEach((j, k) => {
-        trial[j] = within(problem.bounds[j], parameters[j] + step[k]);
+      const room = free.map((j): Bounds => {
+        const [least, most] = problem.bounds[j];
+        return [least - parameters[j], most - parameters[j]];
+      });
+      boundedStep(
+        r,
+        q,
+        free.map((j) => Math.sqrt(damping) * (scale[j] || 1)),
+        room,
+      ).forEach((step, k) => {
+        const j = free[k];
+        const [least, most] = problem.bounds[j];
+        trial[j] = step <= room[k][0] ? least : step >= room[k][1] ? most : parameters[j] + step;
       });
       const moved = free.map((j) => trial[j] - parameters[j]);
       const predicted = predictedReduction(r, q, moved);
       const size = Math.max(
         ...free.map((j, k) => Math.abs(moved[k]) / (Math.abs(parameters[j]) + 1e-12 / (scale[j] || 1))),
       );
-      if (size < settledStep || predicted <= settledReduction * chiSquared) {
+      if (size < settledStep || Math.abs(predicted) <= settledReduction * chiSquared) {
         settled = true;
         break;
+      }
+      // Cut at a bound a step may climb; a shorter one does not.
+      if (predicted < 0) {
+        damping *= growth;
+        growth *= 2;
+        continue;
       }
       steps++;
       const residuals = problem.residuals(trial);
@@ -147,27 +163,41 @@ function freeParameters(parameters: Float64Array, at: Linearised, bounds: readon
   });
 }
 
-/** δ that makes |R δ + q|² + λ|D δ|² least. */
-function dampedStep(
+/**
+ * δ within its room that makes |R δ + q|² + |D δ|² small: components that would leave their room are set to its edge, one round after
+ * the other, and the rest is solved anew.
+ */
+function boundedStep(
   r: readonly Float64Array[],
   q: Float64Array,
-  free: readonly number[],
-  scale: Float64Array,
-  damping: number,
+  damping: readonly number[],
+  room: readonly Bounds[],
 ): Float64Array {
-  const n = free.length;
-  const columns = free.map((j, k) => {
-    const column = new Float64Array(2 * n);
-    for (let i = 0; i <= k; i++) column[i] = r[i][k];
-    column[n + k] = Math.sqrt(damping) * (scale[j] || 1);
-    return column;
-  });
-  const right = new Float64Array(2 * n);
-  q.forEach((value, i) => {
-    right[i] = -value;
-  });
-  const reduced = triangular(columns, right);
-  return backSubstitute(reduced.r, reduced.q);
+  const n = q.length;
+  const step = new Float64Array(n);
+  let open = Array.from(step.keys());
+  while (open.length > 0) {
+    const right = new Float64Array(2 * n);
+    for (let i = 0; i < n; i++) {
+      right[i] = -q[i];
+      for (let k = i; k < n; k++) if (!open.includes(k)) right[i] -= r[i][k] * step[k];
+    }
+    const columns = open.map((k) => {
+      const column = new Float64Array(2 * n);
+      for (let i = 0; i <= k; i++) column[i] = r[i][k];
+      column[n + k] = damping[k];
+      return column;
+    });
+    const reduced = triangular(columns, right);
+    const solved = backSubstitute(reduced.r, reduced.q);
+    open.forEach((k, i) => {
+      step[k] = within(room[k], solved[i]);
+    });
+    const staying = open.filter((k, i) => step[k] === solved[i]);
+    if (staying.length === open.length) break;
+    open = staying;
+  }
+  return step;
 }
 
 /** |q|² - |R δ + q|². */

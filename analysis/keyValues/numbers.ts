@@ -1,3 +1,4 @@
+import { lagOneCorrelation } from '../fit/lagOneCorrelation.ts';
 import { adaptive } from '../motion/adaptive.ts';
 import type { BodyMotion } from '../motion/bodyMotion.ts';
 import type { Break } from '../motion/breaks.ts';
@@ -50,26 +51,38 @@ export function numbers(input: NumbersInput): Numbers {
   keyValues.push(...ofMotion.keyValues);
   findings.push(...ofMotion.findings);
 
-  const theory = usable.flatMap((track) => {
+  const theory: Theory[] = [];
+  for (const track of usable) {
     const release = releases.get(track.bodyId);
     const body = bodyOf(sheet, track);
     const motion = motions.get(track.bodyId);
-    if (!release || !motion || track.role === 'other') return [];
+    if (!release || !motion || track.role === 'other') continue;
     const end = track.role === 'tip' ? extension?.timeS : fall?.lastS;
-    return theories({
+    const { measuredYM, yM } = motion.motion;
+    const found = theories({
       track,
       body,
       tether: sheet.tether,
       ambient: sheet.ambient,
+      settings: sheet.theory,
       gravity,
       releaseS: release.timeS,
       uReleaseS: release.uTimeS,
       startYM: release.yM,
+      uStartYM: release.uYM,
+      frameTimeS: common.frameTimeS,
       timeS: Float64Array.from(motion.motion.timeS),
       untilS: end ?? track.timeS[track.timeS.length - 1],
       uLengthRel: uLengthRel(common),
+      uTimeRel: Math.hypot(...common.time.map((t) => t.uRel)),
+      correlation: lagOneCorrelation(
+        track.yM.map((_, i) => (measuredYM[i] - yM[i]) / track.uYM[i]),
+        track.frame,
+      ),
     });
-  });
+    theory.push(...found.theory);
+    findings.push(...found.findings);
+  }
 
   return {
     motion: Object.fromEntries(Array.from(motions, ([id, m]) => [id, withBand(m, sheet.motion)])),

@@ -1,106 +1,158 @@
-import { type Curve, emptyCurve } from './curve.ts';
+/**
+ * The folded tether of zero separation, one end fixed, in units of its length, mass and g. One family:
+ *
+ * With s = x/L fallen the falling arm has the mass A = (1 - s)/2 and hands (ds/dt)/2 of it a second over to the fold. The fold pulls
+ * the arm down with γ/4·v² (momentum balance of the arm: A a = A + γ v²/4); γ = 1 gives back all of the kinetic energy that
+ * arrives at the fold (energy form: Hamel 1949; Calkin & March, Am. J. Phys. 57 (1989) 154), γ = 0 none of it (momentum form: the tip
+ * falls freely; after Cayley 1857). So γ is the share of the fold's energy that is kept. With α = 1 - s:
+ *
+ *   v² = 2(α^-γ - α)/(1 + γ)     a = 1 + γ v²/(2α)     t = √(2κ) ∫ cos^κ φ dφ from 0 to φ,  α = cos^2κ φ,  κ = 1/(1 + γ)
+ *
+ * An end weight μ (share of the tether's mass) is the same family: A = μ + (1 - s)/2 is the arm of a tether that is longer by 2μ,
+ * followed only until it has fallen by 1.
+ */
+export interface FoldedFamily {
+  /** Share of the fold's energy that is kept. */
+  readonly gamma: number;
+  /** What has been fallen and how, at a time in units of √(L/g). */
+  at(time: number): FoldedState;
+  /** Time at which the share s of the length has been fallen. */
+  timeOf(share: number): number;
+}
 
-/** Time to extension in units of √(L/g), energy form, zero separation: (2π)^(3/2)/Γ(1/4)² (Calkin & March 1989). */
-export const energyExtensionTime = 1.198140234735592;
-/** The same in momentum form: the tip falls freely through L. */
-export const momentumExtensionTime = Math.SQRT2;
+interface FoldedState {
+  readonly share: number;
+  readonly speed: number;
+  readonly acceleration: number;
+  /** ∂share/∂γ at this time. */
+  readonly perGamma: number;
+}
 
-/** Beyond this share of the fall the energy form's acceleration is that of a single link, not of a tether. */
-const lastShare = 0.999;
+/** Less of the arm than this is a single link, not a tether: speed and acceleration stay what they are there. */
+const leastArm = 1e-3;
 
-/** Tip speed and acceleration after falling the share s of the length, energy form: v² = gL s(2-s)/(1-s), a = g(1 + (1-s)^-2)/2. */
-export function energyForm(
-  s: number,
-  lengthM: number,
-  gMps2: number,
-): { speedMps: number; accelerationMps2: number } {
+const panels = 256;
+/** Nodes and weights of Gauss-Legendre on (0, 1), three points. */
+const nodes = [0.5 - Math.sqrt(0.15), 0.5, 0.5 + Math.sqrt(0.15)] as const;
+const weights = [5 / 18, 8 / 18, 5 / 18] as const;
+
+/** φ runs to π/2 as a parabola, so that the root of cos φ at the end becomes smooth. */
+const angle = (x: number) => (Math.PI / 2) * x * (2 - x);
+const anglePer = (x: number) => Math.PI * (1 - x);
+
+/** @throws RangeError if γ is not above -1: the tether would never straighten */
+export function foldedFamily(gamma: number): FoldedFamily {
+  if (!(gamma > -1))
+    throw new RangeError(`foldedFamily: the share of energy kept must be above -1, not ${gamma}`);
+  const kappa = 1 / (1 + gamma);
+  const unit = Math.sqrt(2 * kappa);
+
+  /** ∫cos^κ and ∫cos^κ ln cos from x = a to b (one panel or a part of it). */
+  const part = (a: number, b: number): readonly [number, number] => {
+    let plain = 0;
+    let withLog = 0;
+    for (let k = 0; k < 3; k++) {
+      const x = a + (b - a) * nodes[k];
+      const log = logCos(angle(x));
+      const f = weights[k] * Math.exp(kappa * log) * anglePer(x);
+      plain += f;
+      withLog += f * log;
+    }
+    return [(b - a) * plain, (b - a) * withLog];
+  };
+  const plainTo = new Float64Array(panels + 1);
+  const withLogTo = new Float64Array(panels + 1);
+  for (let i = 0; i < panels; i++) {
+    const [plain, withLog] = part(i / panels, (i + 1) / panels);
+    plainTo[i + 1] = plainTo[i] + plain;
+    withLogTo[i + 1] = withLogTo[i] + withLog;
+  }
+  const whole = plainTo[panels];
+
+  /** x at which the integral has a value, by Newton steps within its panel. */
+  const place = (integral: number): number => {
+    let low = 0;
+    let high = panels;
+    while (high - low > 1) {
+      const middle = (low + high) >> 1;
+      if (plainTo[middle] <= integral) low = middle;
+      else high = middle;
+    }
+    const from = low / panels;
+    let x = from + (integral - plainTo[low]) / (plainTo[low + 1] - plainTo[low]) / panels;
+    // The integrand changes little within a panel: three steps reach rounding, the last panel's square root needs a few more.
+    for (let k = 0; k < 8; k++) {
+      const slope = Math.exp(kappa * logCos(angle(x))) * anglePer(x);
+      if (slope < 1e-12) break;
+      const step = (integral - plainTo[low] - part(from, x)[0]) / slope;
+      x = Math.min((low + 1) / panels, Math.max(from, x + step));
+      if (Math.abs(step) < 1e-15) break;
+    }
+    return x;
+  };
+
   return {
-    speedMps: Math.sqrt((gMps2 * lengthM * s * (2 - s)) / (1 - s)),
-    accelerationMps2: (gMps2 / 2) * (1 + 1 / (1 - s) ** 2),
+    gamma,
+    at(time) {
+      if (time <= 0) return { share: 0, speed: 0, acceleration: 1, perGamma: 0 };
+      const integral = time / unit;
+      const ended = integral >= whole;
+      const x = ended ? 1 : place(integral);
+      const log = ended ? Number.NEGATIVE_INFINITY : logCos(angle(x));
+      const arm = Math.exp(2 * kappa * log);
+      const shown = Math.max(arm, leastArm);
+      const speedSquared = 2 * kappa * (shown ** -gamma - shown);
+      const state = {
+        share: ended ? 1 : -Math.expm1(2 * kappa * log),
+        speed: Math.sqrt(speedSquared),
+        acceleration: 1 + (gamma * speedSquared) / (2 * shown),
+      };
+      if (ended) return { ...state, perGamma: 0 };
+      // At a fixed time: ds/dκ = ∂s/∂κ|φ - v ∂t/∂κ|φ
+      const low = Math.min(panels - 1, Math.floor(x * panels));
+      const withLog = withLogTo[low] + part(low / panels, x)[1];
+      const timePerKappa = time / (2 * kappa) + unit * withLog;
+      const perKappa = -2 * arm * log - state.speed * timePerKappa;
+      return { ...state, perGamma: -kappa * kappa * perKappa };
+    },
+    timeOf(share) {
+      if (share <= 0) return 0;
+      if (share >= 1) return unit * whole;
+      // cos^2κ φ = 1 - s
+      const cosine = (1 - share) ** (1 / (2 * kappa));
+      const phi = Math.acos(cosine);
+      // inverse of φ = π/2·x(2 - x)
+      const x = 1 - Math.sqrt(Math.max(0, 1 - (2 * phi) / Math.PI));
+      const low = Math.min(panels - 1, Math.floor(x * panels));
+      return unit * (plainTo[low] + part(low / panels, x)[0]);
+    },
   };
 }
 
-const intervals = 2048;
-
-/** ∫√cos θ dθ from 0 to each of evenly spaced θ up to π/2, with cos θ = 1 - s: time in units of √(L/g). Simpson's rule. */
-function makeTimeTable(): Float64Array {
-  const sum = new Float64Array(intervals + 1);
-  const h = Math.PI / 2 / intervals;
-  const f = (theta: number) => Math.sqrt(Math.max(0, Math.cos(theta)));
-  for (let i = 0; i < intervals; i++) {
-    const a = i * h;
-    sum[i + 1] = sum[i] + (h / 6) * (f(a) + 4 * f(a + h / 2) + f(a + h));
-  }
-  return sum;
-}
-const timeTable = makeTimeTable();
-
-/** Share of the length that the tip has fallen at a time in units of √(L/g), energy form; 1 from extension on. */
-export function energyShare(time: number): number {
-  const times = timeTable;
-  if (time <= 0) return 0;
-  if (time >= times[intervals]) return 1;
-  let low = 0;
-  let high = intervals;
-  while (high - low > 1) {
-    const middle = (low + high) >> 1;
-    if (times[middle] <= time) low = middle;
-    else high = middle;
-  }
-  // Within an interval time is nearly linear in θ with slope √cos θ: one Newton step from the left edge, one more to settle.
-  const h = Math.PI / 2 / intervals;
-  let theta = low * h;
-  for (let k = 0; k < 3; k++) {
-    const f = (x: number) => Math.sqrt(Math.max(0, Math.cos(x)));
-    const a = low * h;
-    const part = ((theta - a) / 6) * (f(a) + 4 * f((a + theta) / 2) + f(theta));
-    theta = Math.min(
-      (low + 1) * h,
-      Math.max(a, theta + (time - times[low] - part) / Math.max(f(theta), 1e-3)),
-    );
-  }
-  return 1 - Math.cos(theta);
+/** ln cos φ without loss near 0. */
+function logCos(phi: number): number {
+  const sine = Math.sin(phi);
+  return sine < 0.7 ? 0.5 * Math.log1p(-sine * sine) : Math.log(Math.cos(phi));
 }
 
-/** Folded tether, one end fixed, released from rest beside it, no energy lost at the fold; ends when the tether is straight. */
-export function foldedTetherEnergy(
-  timeS: Float64Array,
-  releaseS: number,
-  lengthM: number,
-  gMps2: number,
-): Curve {
-  const unitS = Math.sqrt(lengthM / gMps2);
-  return untilExtension(timeS, releaseS, energyExtensionTime * unitS, (t) => {
-    const s = Math.min(energyShare(t / unitS), lastShare);
-    const { speedMps, accelerationMps2 } = energyForm(s, lengthM, gMps2);
-    return [-s * lengthM, -speedMps, -accelerationMps2];
-  });
+/** Speed and acceleration after the share s of the length, in units of L and g; closed form. */
+export function foldedLaw(
+  gamma: number,
+  share: number,
+): { readonly speed: number; readonly acceleration: number } {
+  const arm = 1 - share;
+  const speedSquared = (2 * (arm ** -gamma - arm)) / (1 + gamma);
+  return { speed: Math.sqrt(speedSquared), acceleration: 1 + (gamma * speedSquared) / (2 * arm) };
 }
 
-/** The same with all of the fold's impact lost (momentum form): the tip falls freely, until it has fallen the length. */
-export function foldedTetherMomentum(
-  timeS: Float64Array,
-  releaseS: number,
-  lengthM: number,
-  gMps2: number,
-): Curve {
-  return untilExtension(timeS, releaseS, momentumExtensionTime * Math.sqrt(lengthM / gMps2), (t) => [
-    -0.5 * gMps2 * t * t,
-    -gMps2 * t,
-    -gMps2,
-  ]);
+/** What the tether pulls with, in units of its weight m g, for the tip's speed in √(gL) and the share fallen. */
+export interface FoldedForces {
+  /** On the anchor: (1 + s)/2 + (2 - γ) v²/4, from the momentum balance of the whole. */
+  readonly anchor: number;
+  /** On the falling arm at the fold: γ v²/4. */
+  readonly fold: number;
 }
 
-function untilExtension(
-  timeS: Float64Array,
-  releaseS: number,
-  durationS: number,
-  at: (t: number) => readonly [number, number, number],
-): Curve {
-  const curve = emptyCurve(timeS.filter((t) => t < releaseS + durationS));
-  for (let i = 0; i < curve.timeS.length; i++) {
-    const t = curve.timeS[i] - releaseS;
-    if (t > 0) [curve.yM[i], curve.vyMps[i], curve.ayMps2[i]] = at(t);
-  }
-  return curve;
+export function foldedForces(gamma: number, share: number, speed: number): FoldedForces {
+  return { anchor: (1 + share) / 2 + ((2 - gamma) * speed * speed) / 4, fold: (gamma * speed * speed) / 4 };
 }

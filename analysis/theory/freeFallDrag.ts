@@ -5,6 +5,11 @@ import { sphereDrag } from './sphereDrag.ts';
 export interface Sphere {
   readonly diameterM: number;
   readonly massKg: number;
+  /**
+   * Stated for a body that is no smooth sphere, referred to the circle of diameterM and constant; it displaces the air of a sphere
+   * of that diameter. Absent: the standard drag curve.
+   */
+  readonly dragCoefficient?: number | undefined;
 }
 
 /** Longest step of the integration [s]: the drag of a laboratory drop changes over tenths of a second. */
@@ -31,8 +36,8 @@ export function freeFallDrag(
   const pull = ((sphere.massKg - displacedKg) * gMps2) / inertiaKg;
   const reynoldsPerMps = (air.densityKgpm3 * sphere.diameterM) / air.viscosityPas;
   const dragPer = (dragShare * air.densityKgpm3 * area) / (2 * inertiaKg);
-  const acceleration = (v: number) =>
-    pull - dragPer * sphereDrag(reynoldsPerMps * Math.abs(v)) * v * Math.abs(v);
+  const dragAt = (v: number) => sphere.dragCoefficient ?? sphereDrag(reynoldsPerMps * Math.abs(v));
+  const acceleration = (v: number) => pull - dragPer * dragAt(v) * v * Math.abs(v);
 
   const curve = emptyCurve(timeS);
   let t = releaseS;

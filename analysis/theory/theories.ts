@@ -1,134 +1,169 @@
+import { profile } from '../fit/profile.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
-import type { Theory } from '../sheet/result.ts';
+import type { Finding, Theory } from '../sheet/result.ts';
 import type { Sheet } from '../sheet/sheet.ts';
+import { admitted } from './admitted.ts';
 import { airOf } from './air.ts';
-import type { Curve } from './curve.ts';
-import { foldedTetherEnergy, foldedTetherMomentum } from './foldedTether.ts';
-import { freeFall } from './freeFall.ts';
-import { freeFallDrag } from './freeFallDrag.ts';
+import { aicc, comparison, standings } from './compare.ts';
+import { type FittedModel, fitModel, heightsOf } from './fitModel.ts';
+import { inMetres, type Stretch } from './measure.ts';
+import type { Model, Stated } from './models/model.ts';
+import { models } from './models/models.ts';
 import type { LocalGravity } from './normalGravity.ts';
+import { parameterFindings, tetherAssumed } from './theoryFindings.ts';
 
-/** What a model is worked out from: the sheet's statements and the body's own release. */
+/** What the models are held against and what is stated. */
 export interface TheoryInput {
   readonly track: WorldTrack;
   readonly body: Sheet['bodies'][number];
   readonly tether: Sheet['tether'];
   readonly ambient: Sheet['ambient'];
+  readonly settings: Sheet['theory'];
   readonly gravity: LocalGravity;
+  /** Release and height before it, as found from the track alone, with their uncertainties. */
   readonly releaseS: number;
   readonly uReleaseS: number;
-  /** Height before release [m]. */
   readonly startYM: number;
-  /** Instants at which the curve is wanted; those of the body's motion. */
+  readonly uStartYM: number;
+  /** Time from frame to frame, median [s]. */
+  readonly frameTimeS: number;
+  /** Instants at which the curves are wanted; those of the body's motion. */
   readonly timeS: Float64Array;
-  /** End of what the model describes: extension or landing [s]. */
+  /** End of what the models describe: extension or landing [s]. */
   readonly untilS: number;
-  /** Relative standard uncertainty of all lengths. */
+  /** Relative standard uncertainties of all lengths and of all times. */
   readonly uLengthRel: number;
+  readonly uTimeRel: number;
+  /** Correlation of the errors of neighbouring frames. */
+  readonly correlation: number;
 }
 
-interface Model {
-  readonly name: Theory['model'];
-  /** Whether the model can say anything of this body with what is stated. */
-  applies(input: TheoryInput): boolean;
-  curve(input: TheoryInput): Curve;
-  parameters(input: TheoryInput): { value: Record<string, number>; u: Record<string, number> };
+export interface Theories {
+  readonly theory: Theory[];
+  readonly findings: Finding[];
 }
 
-const common = (input: TheoryInput) => ({
-  value: { gMps2: input.gravity.gMps2, releaseS: input.releaseS },
-  u: { gMps2: input.gravity.uGMps2, releaseS: input.uReleaseS },
-});
-const withLength = (input: TheoryInput) => ({
-  value: { ...common(input).value, lengthM: input.tether?.lengthM ?? 0 },
-  u: { ...common(input).u, lengthM: input.tether?.uLengthM ?? 0 },
-});
-const isTipOfTether = (input: TheoryInput) => input.track.role === 'tip' && input.tether !== undefined;
-
-/** The models, in the order in which they are shown. A new one is one more entry. */
-export const models: readonly Model[] = [
-  {
-    name: 'freeFall',
-    applies: () => true,
-    curve: (input) => freeFall(input.timeS, input.releaseS, input.gravity.gMps2),
-    parameters: common,
-  },
-  {
-    name: 'freeFallDrag',
-    applies: ({ body }) => body.role !== 'tip' && body.diameterM !== undefined && body.massKg !== undefined,
-    curve: ({ timeS, releaseS, gravity, body, ambient }) =>
-      freeFallDrag(
-        timeS,
-        releaseS,
-        gravity.gMps2,
-        { diameterM: body.diameterM ?? 0, massKg: body.massKg ?? 0 },
-        airOf(ambient),
-      ),
-    parameters(input) {
-      const { value, u } = common(input);
-      const { diameterM = 0, massKg = 0 } = input.body;
-      return {
-        value: { ...value, diameterM, massKg, airDensityKgpm3: airOf(input.ambient).densityKgpm3 },
-        u,
-      };
-    },
-  },
-  {
-    name: 'foldedTetherEnergy',
-    applies: isTipOfTether,
-    curve: ({ timeS, releaseS, tether, gravity }) =>
-      foldedTetherEnergy(timeS, releaseS, tether?.lengthM ?? 0, gravity.gMps2),
-    parameters: withLength,
-  },
-  {
-    name: 'foldedTetherMomentum',
-    applies: isTipOfTether,
-    curve: ({ timeS, releaseS, tether, gravity }) =>
-      foldedTetherMomentum(timeS, releaseS, tether?.lengthM ?? 0, gravity.gMps2),
-    parameters: withLength,
-  },
-];
-
-/** Every model that applies to a body, with its curve and how far the measured positions are from it. */
-export function theories(input: TheoryInput): Theory[] {
-  const within = { ...input, timeS: input.timeS.filter((t) => t <= input.untilS) };
-  return models
-    .filter((model) => model.applies(input))
-    .map((model) => {
-      const curve = model.curve(within);
-      const { value, u } = model.parameters(input);
-      return {
-        model: model.name,
-        body: input.body.id,
-        parameters: value,
-        uParameters: u,
-        ...chiSquared(model, input),
-        curve: {
-          timeS: Array.from(curve.timeS),
-          yM: Array.from(curve.yM, (y) => y + input.startYM),
-          vyMps: Array.from(curve.vyMps),
-          ayMps2: Array.from(curve.ayMps2),
-        },
-      };
-    });
-}
-
-/**
- * Sum of squared standardised distances of the measured heights from the model after release. Each height's uncertainty is
- * that of tracking with that of the scale at its fall; nothing is fitted but the release instant and the start, so two degrees
- * of freedom are gone.
- */
-function chiSquared(model: Model, input: TheoryInput): { chiSquared: number; dof: number } {
-  const { track, releaseS, untilS, startYM, uLengthRel } = input;
-  const used = Array.from(track.timeS.keys()).filter(
-    (i) => track.timeS[i] > releaseS && track.timeS[i] <= untilS,
-  );
-  const curve = model.curve({ ...input, timeS: Float64Array.from(used, (i) => track.timeS[i]) });
-  let sum = 0;
-  for (let k = 0; k < curve.timeS.length; k++) {
-    const i = used[k];
-    const fall = track.yM[i] - startYM;
-    sum += (fall - curve.yM[k]) ** 2 / (track.uYM[i] ** 2 + (uLengthRel * fall) ** 2);
+/** Every model that concerns a body, fitted to its track, and what telling them apart comes to. */
+export function theories(input: TheoryInput): Theories {
+  const stated = statedOf(input);
+  const { chosen, findings } = admitted(models, stated, input.settings);
+  const measure = inMetres(input.track, stretchOf(input, stated));
+  const fits: FittedModel[] = [];
+  for (const model of chosen) {
+    const setting = { ...input, robust: input.settings?.robust ?? null };
+    const starts = fits.filter((f) => f.model.specialCaseOf.includes(model.name)).map((f) => f.values);
+    const fitted = fitModel(model, stated, measure, setting, starts);
+    if ('reason' in fitted) findings.push(notFitted(model, input.body.id, fitted.reason));
+    else fits.push(fitted);
   }
-  return { chiSquared: sum, dof: Math.max(0, curve.timeS.length - 2) };
+  if (fits.some((f) => f.values.lengthM !== undefined)) findings.push(...tetherAssumed(stated));
+  const ranked = standings(fits, measure.timeS);
+  findings.push(...comparison(ranked, input.body.id), ...parameterFindings(ranked));
+  return { theory: fits.map((fitted) => entryOf(fitted, input, stated, measure.timeS)), findings };
+}
+
+function statedOf({ body, tether, ambient, gravity }: TheoryInput): Stated {
+  return {
+    body,
+    tether: tether
+      ? {
+          lengthM: tether.lengthM,
+          uLengthM: tether.uLengthM ?? null,
+          separationM: tether.separationM ?? null,
+          massKg: tether.massKg ?? null,
+          uMassKg: tether.uMassKg ?? null,
+          links: tether.links ?? null,
+          tipMassKg: tether.tipMassKg ?? null,
+          uTipMassKg: tether.uTipMassKg ?? null,
+        }
+      : null,
+    gravity,
+    air: airOf(ambient),
+  };
+}
+
+/** Frames at rest that are fitted too: enough to settle the height before release, few enough to leave a swing out. */
+const restFrames = 20;
+/**
+ * The last tenth of a tether's fall is ruled by its links and by the distance of its ends, not by a fold without length: the tip's
+ * fall is fitted up to here [share of the length].
+ */
+const lastShare = 0.9;
+
+/** The points that are fitted. They depend on the track alone, so that all models answer for the same ones. */
+function stretchOf({ track, releaseS, startYM, untilS }: TheoryInput, { body, tether }: Stated): Stretch {
+  const { timeS, yM } = track;
+  const released = timeS.findIndex((t) => t > releaseS);
+  if (released < 0) return { from: 0, to: 0 };
+  const lowestM =
+    body.role === 'tip' && tether ? startYM - lastShare * tether.lengthM : Number.NEGATIVE_INFINITY;
+  let to = released;
+  while (to < timeS.length && timeS[to] <= untilS && yM[to] > lowestM) to++;
+  return { from: Math.max(0, released - restFrames), to };
+}
+
+const notFitted = (model: Model, bodyId: string, reason: string): Finding => ({
+  level: 'note',
+  code: 'theoryNotFitted',
+  text: `${model.title} could not be fitted to the fall of "${bodyId}": ${reason}.`,
+});
+
+function entryOf(fitted: FittedModel, input: TheoryInput, stated: Stated, fittedS: Float64Array): Theory {
+  const { model, parameters, values, u, solution, settledBy, problem } = fitted;
+  const names = parameters.map((p) => p.name);
+  const free = names.flatMap((name, j) => (Number.isFinite(u[name]) && u[name] > 0 ? [{ name, j }] : []));
+  const wanted = input.timeS.filter((t) => t <= input.untilS);
+  const until = heightsOf(model, stated, new Float64Array(0), values).untilS;
+  const timeS = wanted.filter((t) => t < until);
+  const curve = heightsOf(model, stated, timeS, values);
+  const residuals = residualsOf(fitted, input.track, stated, fittedS);
+  const profiled = (input.settings?.profiles ?? []).filter(
+    (name) => names.includes(name) && settledBy[name] !== 'held',
+  );
+  return {
+    model: model.name,
+    body: input.body.id,
+    parameters: { ...values },
+    uParameters: Object.fromEntries(
+      names.filter((name) => Number.isFinite(u[name])).map((name) => [name, u[name]]),
+    ),
+    chiSquared: solution.chiSquared,
+    dof: fitted.dof,
+    curve: {
+      timeS: Array.from(timeS),
+      yM: Array.from(curve.yM),
+      vyMps: Array.from(curve.vyMps),
+      ayMps2: Array.from(curve.ayMps2),
+    },
+    ...(Number.isFinite(aicc(fitted)) ? { aicc: aicc(fitted) } : {}),
+    settledBy: { ...settledBy },
+    correlation: {
+      names: free.map((f) => f.name),
+      r: free.map((a) => free.map((b) => solution.covariance[a.j][b.j] / (u[a.name] * u[b.name]))),
+    },
+    residuals,
+    ...(profiled.length > 0
+      ? {
+          profiles: profiled.map((parameter) => {
+            const { values: at, chiSquared, from, to } = profile(problem, solution, names.indexOf(parameter));
+            return { parameter, values: [...at], chiSquared: [...chiSquared], from, to };
+          }),
+        }
+      : {}),
+  };
+}
+
+function residualsOf(
+  { model, values, standardised }: FittedModel,
+  track: WorldTrack,
+  stated: Stated,
+  timeS: Float64Array,
+) {
+  const { yM } = heightsOf(model, stated, timeS, values);
+  const first = track.timeS.indexOf(timeS[0]);
+  return {
+    timeS: Array.from(timeS),
+    yM: Array.from(yM, (y, i) => track.yM[first + i] - y),
+    standardised: Array.from(standardised),
+  };
 }

@@ -1,9 +1,10 @@
 import type { SheetBody } from '../../sheet/sheet.ts';
+import type { ModelName } from '../../sheet/theorySettings.ts';
 import type { Air } from '../air.ts';
 import type { LocalGravity } from '../normalGravity.ts';
 
 /** A value with its standard uncertainty, known before the footage is looked at. */
-export interface Prior {
+interface Prior {
   readonly value: number;
   readonly u: number;
 }
@@ -29,7 +30,10 @@ export type Values = Readonly<Record<string, number>>;
 
 /** What is known of a body and its rig apart from the footage. Models take what they need and refuse when it is missing. */
 export interface Stated {
-  readonly body: Pick<SheetBody, 'id' | 'role' | 'diameterM' | 'massKg'>;
+  readonly body: Pick<
+    SheetBody,
+    'id' | 'role' | 'diameterM' | 'massKg' | 'dragCoefficient' | 'uDragCoefficient'
+  >;
   readonly tether: Tether | null;
   readonly gravity: LocalGravity;
   readonly air: Air;
@@ -42,13 +46,16 @@ export interface Tether {
   readonly separationM: number | null;
   readonly massKg: number | null;
   readonly links: number | null;
+  readonly uMassKg: number | null;
   /** Mass at the free end that is not tether: clamp, hook, and the marker that is followed [kg]. */
   readonly tipMassKg: number | null;
+  readonly uTipMassKg: number | null;
 }
 
 /**
  * A body's fall from rest after a model; arrays have the length of the times asked for. Heights are counted up from the place of
- * rest, so they are 0 until release and negative after. From `untilS` on the model says nothing: its last values stay.
+ * rest, so they are 0 until release and negative after. From `untilS` on the model says nothing: the body stays where it is, with
+ * velocity and acceleration 0.
  */
 export interface Fall {
   readonly yM: Float64Array;
@@ -68,9 +75,11 @@ export interface Model {
   readonly title: string;
   /** Seconds instead of a millisecond for a curve: fitted only where the sheet asks for it. */
   readonly expensive: boolean;
-  /** The more general model of which this is a special case, with the parameter values that make it so; null for none. */
-  readonly specialCaseOf: { readonly model: ModelName; readonly at: Values } | null;
-  /** Why the model cannot be held against this body, as a sentence that says what to state; null when it can. */
+  /** More general models of which this is the special case with one or more of their parameters held. */
+  readonly specialCaseOf: readonly ModelName[];
+  /** Whether the model speaks of such a body at all. */
+  concerns(stated: Stated): boolean;
+  /** Why the model cannot be held against a body that it concerns, in words that say what to state; null when it can. */
   refusal(stated: Stated): string | null;
   /** In a fixed order. Only called where `refusal` gave null, as are the following. */
   parameters(stated: Stated): readonly Parameter[];
@@ -82,13 +91,3 @@ export interface Model {
    */
   slopes(sinceReleaseS: Float64Array, values: Values, stated: Stated): readonly Float64Array[];
 }
-
-/** Every model that a result may hold. */
-export type ModelName =
-  | 'freeFall'
-  | 'freeFallDrag'
-  | 'foldedTetherEnergy'
-  | 'foldedTetherMomentum'
-  | 'foldedTetherShare'
-  | 'foldedTetherEndWeight'
-  | 'linkedTether';

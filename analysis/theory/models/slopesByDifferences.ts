@@ -18,6 +18,8 @@ export function slopesByDifferences(
 ): Float64Array[] {
   const share = Math.max(relativeStep, Math.cbrt(relativeNoise));
   return parameters.map(({ name, bounds: [least, most], prior }) => {
+    // A held parameter is never moved: its slope is not worth two curves.
+    if (prior?.u === 0) return new Float64Array(sinceReleaseS.length);
     const value = values[name];
     // A parameter near 0 has no size of its own; its prior's uncertainty is the next best.
     const step = share * Math.max(Math.abs(value), prior?.u ?? 0, 1e-3);

@@ -1,0 +1,66 @@
+import type { Finding } from '../sheet/result.ts';
+import type { Standing } from './compare.ts';
+import type { FittedModel } from './fitModel.ts';
+import { assumedUMassRel } from './models/foldedTether.ts';
+import type { Stated } from './models/model.ts';
+
+/** What the models of a tether took because the sheet is silent. */
+export function tetherAssumed({ tether, body }: Stated): Finding[] {
+  if (!tether || body.role !== 'tip') return [];
+  if (tether.tipMassKg === null) {
+    return [
+      {
+        level: 'caution',
+        code: 'tipMassNotStated',
+        text: "The mass at the free end (clamp, hook, the marker itself) is not stated: theory takes none. 2 % of the tether's mass already cuts the peak fivefold. State tether.tipMassKg, 0 if there is none.",
+      },
+    ];
+  }
+  if (tether.tipMassKg === 0 || (tether.uTipMassKg !== null && tether.uMassKg !== null)) return [];
+  return [
+    {
+      level: 'note',
+      code: 'assumed',
+      text: `Not stated, so assumed for the theory: masses good to ${assumedUMassRel * 100} % (tether.uMassKg, tether.uTipMassKg). State them in the sheet.`,
+    },
+  ];
+}
+
+/**
+ * Parameters whose value means nothing, of the models that describe the drop; and statements that the nearest model contradicts where
+ * none does.
+ */
+export function parameterFindings(ranked: readonly Standing[]): Finding[] {
+  const describing = ranked.filter((s) => s.describes);
+  if (describing.length > 0) return describing.flatMap(({ fitted }) => unsettled(fitted));
+  return ranked.slice(0, 1).flatMap(({ fitted }) => contradicted(fitted));
+}
+
+function unsettled({ model, parameters, settledBy, solution }: FittedModel): Finding[] {
+  const names = parameters.flatMap(({ name, meaning }, j) => {
+    if (settledBy[name] !== 'nothing') return [];
+    return [`${meaning} (${name}${solution.atBound[j] ? ', at the end of what is possible' : ''})`];
+  });
+  if (names.length === 0) return [];
+  return [
+    {
+      level: 'note',
+      code: 'parameterNotSettled',
+      text: `The footage cannot settle ${names.join(' and ')} of ${model.title}: the value means nothing. A longer stretch of the fall, or a statement in the sheet, would.`,
+    },
+  ];
+}
+
+function contradicted({ model, parameters, solution }: FittedModel): Finding[] {
+  const names = parameters.flatMap(({ name, meaning, prior }, j) =>
+    prior !== null && prior.u > 0 && solution.atBound[j] ? [`${meaning} (${name})`] : [],
+  );
+  if (names.length === 0) return [];
+  return [
+    {
+      level: 'caution',
+      code: 'statementContradicted',
+      text: `To come near the footage ${model.title} would need ${names.join(' and ')} further from what is stated than five of the stated uncertainties: check the statement, or the model is not this drop's.`,
+    },
+  ];
+}
