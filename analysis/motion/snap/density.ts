@@ -1,12 +1,16 @@
 import { EigenvalueDecomposition, Matrix } from 'ml-matrix';
 import type { Cells } from './cells.ts';
 import type { Information } from './information.ts';
+import { type Between, interpolated, type Places } from './knots.ts';
 import { type Minimum, minimise } from './minimise.ts';
 import { type Posterior, posterior } from './posterior.ts';
 
 /** What the data are to a density: normal equations on cells, with the factor on their variances. */
 export interface Data {
   readonly cells: Cells;
+  readonly places: Places;
+  /** Where the cells' middles lie between the knots. */
+  readonly between: Between;
   readonly positions: Information;
   readonly noise: number;
   /** Observations whose uncertainty stays as it is: rest before the piece. */
@@ -23,7 +27,7 @@ export interface Prior {
   readonly change: number;
 }
 
-/** Log density of the snap, piecewise linear between even knots over 0 … 1, at its most probable. */
+/** Log density of the snap, piecewise linear between its knots, at its most probable. */
 export interface Density {
   readonly knots: Float64Array;
   readonly posterior: Posterior;
@@ -35,24 +39,21 @@ export interface Density {
 
 /** How sure the middle of the log density is beforehand: bandwidths a hundredth to a hundred times are two deviations off. */
 const middleDeviation = 18;
+/**
+ * The most probable density of a curve that is nearly a cubic would be none at all, and its uncertainty too small with it: a prior
+ * that rises with the square root of the density keeps off zero by about a standard deviation (Chung et al., Psychometrika 78 (2013)
+ * 685).
+ */
+const awayFromZero = 0.4;
 const enough = 0.01;
 /** Step of the knots for second derivatives. */
 const hessianStep = 0.25;
 
-export function interpolated(knots: Float64Array, at: number): number {
-  const last = knots.length - 1;
-  const s = Math.min(1, Math.max(0, at)) * last;
-  const k = Math.min(Math.max(0, last - 1), Math.floor(s));
-  return last === 0 ? knots[0] : knots[k] + (s - k) * (knots[k + 1] - knots[k]);
-}
-
-/** Log density at the middle of each cell. */
-export function densityOfCells({ edges, count }: Cells, knots: Float64Array): Float64Array {
-  return Float64Array.from({ length: count }, (_, j) => interpolated(knots, (edges[j] + edges[j + 1]) / 2));
-}
-
-export function posteriorOf({ cells, positions, noise, fixed }: Data, knots: Float64Array): Posterior | null {
-  return posterior(cells, positions, noise, fixed, densityOfCells(cells, knots));
+export function posteriorOf(
+  { cells, between, positions, noise, fixed }: Data,
+  knots: Float64Array,
+): Posterior | null {
+  return posterior(cells, positions, noise, fixed, interpolated(between, knots));
 }
 
 /** The most probable density, without its uncertainty. */
@@ -101,19 +102,18 @@ function cost(data: Data, prior: Prior, knots: Float64Array) {
   const found = posteriorOf(data, knots);
   if (!found) return { value: Number.POSITIVE_INFINITY, gradient };
   let value = -found.logEvidence;
-  const { edges, count } = data.cells;
-  for (let j = 0; j < count; j++) {
-    const s = Math.min(1, Math.max(0, (edges[j] + edges[j + 1]) / 2)) * (m - 1);
-    const k = Math.min(Math.max(0, m - 2), Math.floor(s));
-    gradient[k] -= (1 - (s - k)) * found.slope[j];
-    if (m > 1) gradient[k + 1] -= (s - k) * found.slope[j];
+  const { knot, share } = data.between;
+  for (let j = 0; j < share.length; j++) {
+    gradient[knot[j]] -= (1 - share[j]) * found.slope[j];
+    gradient[knot[j] + 1] -= share[j] * found.slope[j];
   }
   const mean = knots.reduce((sum, v) => sum + v, 0) / m;
   const off = (mean - prior.middle) / middleDeviation ** 2;
   value += 0.5 * off * (mean - prior.middle);
+  value -= awayFromZero * mean;
   const weight = 1 / prior.change ** 2;
   for (let k = 0; k < m; k++) {
-    gradient[k] += off / m;
+    gradient[k] += (off - awayFromZero) / m;
     if (k === 0) continue;
     const rise = knots[k] - knots[k - 1];
     value += 0.5 * weight * rise * rise;

@@ -9,37 +9,62 @@ export interface Noise {
 /** The stated uncertainty counts as much as so many residuals: it holds where there are few. */
 const statedCounts = 4;
 const mostCorrelation = 12;
+const mostLag = 40;
+/** The smoother is not taken to have swallowed more than this share of the noise. */
+const mostTaken = 0.3;
+const turns = 6;
 
 /**
- * Variance r'r / (n - edf) and 1 + 2 Σ ρ over the first significant autocorrelations (shared limits, section B). Residuals of a
- * smoother with white noise are correlated by -edf/n among near neighbours; that is taken off.
+ * Variance r'r / (n - edf) and 1 + 2 Σ ρ over the first significant autocorrelations (shared limits, section B). What the smoother
+ * takes out of the residuals, edf/n of a white noise, is that much more where the noise is stronger at the low frequencies that it
+ * passes: taken into account in turns.
  *
  * @param residual  over the stated u, in the order of time
  * @param joined    whether a residual comes one frame after the one before it
  */
-export function noiseOf(residual: Float64Array, joined: Uint8Array, edf: number): Noise {
+export function noiseOf(
+  residual: Float64Array,
+  joined: Uint8Array,
+  edf: number,
+): Noise & { whiteVariance: number } {
   const n = residual.length;
-  let squares = 0;
-  for (let i = 0; i < n; i++) squares += residual[i] * residual[i];
-  const free = Math.max(0, n - edf);
-  const variance = (statedCounts + squares) / (statedCounts + free);
-  const scatter = squares / Math.max(1, free);
-  const share = edf / n;
+  const squares = residual.reduce((sum, r) => sum + r * r, 0);
+  const products = laggedProducts(
+    residual,
+    joined,
+    Math.floor(Math.min(mostLag, (n - edf) / 8, n / (4 * edf))),
+  );
   let correlation = 1;
-  const mostLag = Math.floor(Math.min(40, free / 8, n / (2 * edf)));
-  const run = new Int32Array(n);
-  for (let i = 1; i < n; i++) run[i] = joined[i] ? run[i - 1] + 1 : 0;
-  for (let lag = 1; lag <= mostLag && scatter > 0; lag++) {
+  for (let turn = 0; turn < turns; turn++) {
+    const taken = Math.min(mostTaken, (correlation * edf) / n);
+    const scatter = squares / n / (1 - taken);
     let sum = 0;
-    let pairs = 0;
-    for (let i = lag; i < n; i++) {
+    for (const [k, { mean, pairs }] of products.entries()) {
+      const rho = mean / scatter + taken;
+      if (!(rho > (k === 0 ? 2 : 1) / Math.sqrt(pairs))) break;
+      sum += Math.min(1, rho);
+    }
+    correlation = Math.min(mostCorrelation, 1 + 2 * sum);
+  }
+  const varianceWith = (parameters: number) =>
+    (statedCounts + squares) / (statedCounts + Math.max(n - parameters, n * (1 - mostTaken)));
+  return { variance: varianceWith(correlation * edf), whiteVariance: varianceWith(edf), correlation };
+}
+
+/** Means of the products of residuals some frames apart, with the number of pairs, from one frame on while there are pairs. */
+function laggedProducts(residual: Float64Array, joined: Uint8Array, lags: number) {
+  const run = new Int32Array(residual.length);
+  for (let i = 1; i < run.length; i++) run[i] = joined[i] ? run[i - 1] + 1 : 0;
+  const products: { mean: number; pairs: number }[] = [];
+  for (let lag = 1; lag <= lags; lag++) {
+    let [sum, pairs] = [0, 0];
+    for (let i = lag; i < run.length; i++) {
       if (run[i] < lag) continue;
       sum += residual[i] * residual[i - lag];
       pairs++;
     }
-    const rho = sum / Math.max(1, pairs) / scatter + share;
-    if (!(rho > 2 / Math.sqrt(pairs))) break;
-    correlation += 2 * Math.min(1, rho);
+    if (pairs === 0) break;
+    products.push({ mean: sum / pairs, pairs });
   }
-  return { variance, correlation: Math.min(mostCorrelation, correlation) };
+  return products;
 }

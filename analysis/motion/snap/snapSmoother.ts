@@ -8,6 +8,15 @@ import { type Scaled, scaledPiece } from './scaled.ts';
 
 /** Share of the density's own uncertainty that goes into the curves': Laplace's approximation is too wide (shared limits, section B). */
 const densityShare = 0.35;
+/**
+ * The variance given the data holds the noise through the weights and the bias of smoothing as the prior expects it. A curve with a
+ * continuous fourth derivative is smoother than the prior's, and its bias less: for the acceleration, where expected bias is five
+ * eighths of the variance (∫ω⁴/(1 + ω⁸)² over ∫ω⁴/(1 + ω⁸) is 3/8), intervals would hold 99 %. Nychka, J. Am. Stat. Assoc. 83 (1988)
+ * 1134, on what such intervals hold; the share was set on the bench's motions.
+ */
+const biasShare = 0.8;
+/** Step of the logarithm of the noise for a derivative. */
+const noiseStep = 0.05;
 
 /**
  * A piece by the Gaussian-process smoother of varying density: curves with the uncertainty from noise, its correlation, smoothing and
@@ -21,7 +30,8 @@ export function snapSmoother(piece: Piece): Smoothed {
   const fit = snapFit(scaled);
   const at = instants(fit.data.cells.edges);
   const swings = swingsOf(fit);
-  const curves = [0, 1, 2, 3].map((derivative) => curveOf(scaled, fit, at, swings, derivative));
+  const noises = noisesOf(fit);
+  const curves = [0, 1, 2, 3].map((derivative) => curveOf(scaled, fit, at, swings, noises, derivative));
   return {
     position: curves[0],
     velocity: curves[1],
@@ -52,6 +62,7 @@ function curveOf(
   { data, density }: SnapFit,
   at: Float64Array,
   swings: readonly (readonly [Posterior, Posterior])[],
+  noises: readonly Posterior[],
   derivative: number,
 ): Curve {
   const { cells } = data;
@@ -61,6 +72,11 @@ function curveOf(
   const value = valuesAt(cells, coefficients, time, derivative);
   const variance = variancesAt(cells, covariance, time, derivative);
   const atBest = variancesAt(cells, covariance, at, derivative);
+  const [noisier, calmer] = noises.map((n) => variancesAt(cells, n.covariance, at, derivative));
+  const held = atBest.map((v, k) => {
+    const ofNoise = Math.min(1, Math.max(0, (noisier[k] - calmer[k]) / (2 * noiseStep * v)));
+    return ofNoise + biasShare * (1 - ofNoise);
+  });
   const more = new Float64Array(at.length);
   for (const ways of swings) {
     const [up, down] = ways.map((w) => valuesAt(cells, w.coefficients, at, derivative));
@@ -70,9 +86,10 @@ function curveOf(
     }
   }
   const extra = between(at, more, time);
+  const share = between(at, held, time);
   return {
     value: value.map((v, i) => unit * v + scaled.cubic(time[i], derivative)),
-    u: variance.map((v, i) => unit * Math.sqrt(Math.max(v, v + extra[i]))),
+    u: variance.map((v, i) => unit * Math.sqrt(share[i] * v + Math.max(0, extra[i]))),
   };
 }
 
@@ -99,4 +116,11 @@ function swingsOf({ data, density }: SnapFit): (readonly [Posterior, Posterior])
     );
     return up && down ? [[up, down] as const] : [];
   });
+}
+
+/** The curve's covariance with the noise a little greater and a little less: its slope is the part that noise has in it. */
+function noisesOf({ data, density }: SnapFit): Posterior[] {
+  return [noiseStep, -noiseStep].flatMap(
+    (step) => posteriorOf({ ...data, noise: data.noise * Math.exp(step) }, density.knots) ?? [],
+  );
 }
