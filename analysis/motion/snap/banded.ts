@@ -1,5 +1,5 @@
 /** Entries of a row: the diagonal and four to its right. */
-export const rowLength = 5;
+const rowLength = 5;
 
 /**
  * Symmetric matrices of half-bandwidth 4 as rows of five: entry (i, i + d) at 5 i + d, d = 0 … 4. Here they are sums over cells,
@@ -38,7 +38,7 @@ export function bandSolve(r: Band, size: number, x: Float64Array): void {
 }
 
 /** Solves R x = y in place. */
-export function solveUpper(r: Band, size: number, x: Float64Array): void {
+function solveUpper(r: Band, size: number, x: Float64Array): void {
   for (let i = size - 1; i >= 0; i--) {
     const a = i * rowLength;
     const reach = Math.min(rowLength, size - i);

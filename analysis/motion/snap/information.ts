@@ -21,7 +21,7 @@ export interface Observation {
   readonly u: number;
 }
 
-export function noInformation({ size }: Cells): Information {
+function noInformation({ size }: Cells): Information {
   // Four spare rows, so that no sum over five functions runs past the end.
   const matrix = new Float64Array((size + order) * order);
   return { matrix, right: new Float64Array(size), squares: 0, weights: 0 };

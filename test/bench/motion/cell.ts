@@ -16,12 +16,12 @@ export interface Errors {
 }
 
 /** Root-mean-square errors of one quantity, in the core and over the whole record. */
-export interface Rms {
+interface Rms {
   readonly core: number;
   readonly whole: number;
 }
 
-export interface Covered {
+interface Covered {
   readonly all: number;
   readonly peak: number;
   readonly ends: number;
@@ -148,7 +148,7 @@ export function benchCell(
 }
 
 /** First-order autoregression of the stated spread. */
-export function noiseSeries(n: number, { uM, lagOne }: Errors, seed: number): Float64Array {
+function noiseSeries(n: number, { uM, lagOne }: Errors, seed: number): Float64Array {
   const random = seededRandom(seed);
   let last = random.gaussian();
   const fresh = Math.sqrt(1 - lagOne * lagOne);
