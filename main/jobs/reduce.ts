@@ -1,6 +1,7 @@
 import { resolve } from 'node:path';
 import { type FrameTimes, frameTimes } from '../../analysis/clock/frameTimes.ts';
 import { reduce } from '../../analysis/reduce.ts';
+import { asksToRefine, refineSheet } from '../../analysis/scale/mark/refineSheet.ts';
 import { checkSheet } from '../../analysis/sheet/checkSheet.ts';
 import type { Finding, Result } from '../../analysis/sheet/result.ts';
 import type { Sheet } from '../../analysis/sheet/sheet.ts';
@@ -9,7 +10,9 @@ import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';
 import { program } from '../program.ts';
 import { Refusal } from '../refusal.ts';
 import { followBodies } from './followBodies.ts';
+import { refuseMarksOutside } from './placing.ts';
 import type { Progress } from './progress.ts';
+import { readForceRecord } from './readForceRecord.ts';
 import { readTimes } from './readTimes.ts';
 
 export interface ReduceOrder {
@@ -35,14 +38,17 @@ export interface ReduceTools {
  * @throws Refusal: 2 sheet, 3 footage, 4 a body was lost so that no key value can be given
  */
 export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promise<Result> {
-  const { sheet, folder } = order;
-  const stop = checkSheet(sheet).find((f) => f.level === 'stop');
+  const { folder } = order;
+  const stop = checkSheet(order.sheet).find((f) => f.level === 'stop');
   if (stop) throw new Refusal(stop.code, 2, stop.text);
   const listedS =
-    sheet.clock.kind === 'timestamps' ? await readTimes(resolve(folder, sheet.clock.path)) : null;
+    order.sheet.clock.kind === 'timestamps' ? await readTimes(resolve(folder, order.sheet.clock.path)) : null;
+  const { loadCell } = order.sheet;
+  const forceRecord = loadCell ? await readForceRecord(resolve(folder, loadCell.path)) : null;
 
-  const source = await tools.openFootage(resolve(folder, sheet.footage.path));
+  const source = await tools.openFootage(resolve(folder, order.sheet.footage.path));
   try {
+    const { sheet, findings: ofMarks } = await refined(order.sheet, source, tools.signal);
     const report = tools.onProgress ?? (() => {});
     const followed = await followBodies(source, sheet, await tools.loadSearch(), tools.signal, report);
     const { index, firstFrame, lastFrame, tracks } = followed;
@@ -67,7 +73,14 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
       },
       timeS: times.timeS,
       tracks,
-      findings: [...(order.findings ?? []), ...index.findings, ...followed.findings, ...times.findings],
+      forceRecord,
+      findings: [
+        ...(order.findings ?? []),
+        ...index.findings,
+        ...ofMarks,
+        ...followed.findings,
+        ...times.findings,
+      ],
     });
     refuseIfUnfit(result);
     refuseIfLost(result);
@@ -75,6 +88,18 @@ export async function reduceSheet(order: ReduceOrder, tools: ReduceTools): Promi
   } finally {
     await source.close();
   }
+}
+
+/** The sheet with the marks refined that ask for it, in the first frame that is reduced. */
+async function refined(
+  sheet: Sheet,
+  source: FrameSource,
+  signal: AbortSignal | undefined,
+): Promise<ReturnType<typeof refineSheet>> {
+  if (!asksToRefine(sheet)) return { sheet, findings: [] };
+  const picture = await source.frame(sheet.footage.firstFrame, signal);
+  refuseMarksOutside(sheet, picture);
+  return refineSheet(sheet, picture);
 }
 
 function clockOrRefuse(times: FrameTimes): Extract<FrameTimes, { ok: true }> {
