@@ -10,6 +10,7 @@ import { type Settled, settle } from './sheet/assumptions.ts';
 import { checkSheet } from './sheet/checkSheet.ts';
 import type { BodyInFrame, Finding, Result, ResultFrame } from './sheet/result.ts';
 import type { Sheet } from './sheet/sheet.ts';
+import type { ForceRecord } from './theory/force/parseForceRecord.ts';
 import { type LocalGravity, siteGravity } from './theory/normalGravity.ts';
 import type { Track } from './track/track.ts';
 import { trackFindings } from './track/trackFindings.ts';
@@ -22,6 +23,8 @@ export interface ReduceInput {
   /** Mid-exposure time of row 0 of every frame of the footage [s]. */
   readonly timeS: Float64Array;
   readonly tracks: readonly Track[];
+  /** The load cell's record where the sheet names one. */
+  readonly forceRecord?: ForceRecord | null;
   /** What was noticed on the way here: sheet, footage, clock. */
   readonly findings: readonly Finding[];
 }
@@ -57,6 +60,7 @@ export function reduce(input: ReduceInput): Result {
     },
     gravity,
     sheet: { ...sheet, tether: settled.tether },
+    forceRecord: input.forceRecord ?? null,
   });
   const derived = fromGravity ? withoutGravityCheck(allNumbers) : allNumbers;
   const decided = verdicts(sheet.limits, derived.keyValues);
@@ -69,6 +73,8 @@ export function reduce(input: ReduceInput): Result {
     motion: derived.motion,
     keyValues: derived.keyValues,
     theory: derived.theory,
+    ...(derived.tension ? { tension: derived.tension } : {}),
+    ...(derived.loadCell ? { loadCell: derived.loadCell } : {}),
     verdicts: decided.verdicts,
     findings: [
       ...input.findings,

@@ -9,7 +9,8 @@ export function linearisedByDifferences(
   parameters: Float64Array,
 ): Linearised {
   const jacobian = Array.from(parameters, (value, j) => {
-    const step = relativeStep * (Math.abs(value) || 1);
+    // A parameter that is 0 but for rounding has no size of its own.
+    const step = relativeStep * (Math.abs(value) > 1e-9 ? Math.abs(value) : 1);
     const [below, above] = [parameters.slice(), parameters.slice()];
     below[j] = value - step;
     above[j] = value + step;

@@ -7,8 +7,9 @@ import { methodOf } from '../motion/prescribed/methodOf.ts';
 import { methodProblem } from '../motion/prescribed/methodProblem.ts';
 import { simultaneousFactor } from '../motion/simultaneousBand.ts';
 import type { WorldTrack } from '../motion/worldTrack.ts';
-import type { Finding, KeyValue, Motion, Theory } from '../sheet/result.ts';
+import type { Finding, KeyValue, LoadCellResult, Motion, Tension, Theory } from '../sheet/result.ts';
 import type { Sheet, SheetBody } from '../sheet/sheet.ts';
+import { tipForces } from '../theory/force/tipForces.ts';
 import { theories } from '../theory/theories.ts';
 import { uLengthRel } from './commonSources.ts';
 import { eventsOf } from './events.ts';
@@ -19,6 +20,8 @@ export interface Numbers {
   readonly motion: Record<string, Motion>;
   readonly keyValues: KeyValue[];
   readonly theory: Theory[];
+  readonly tension: Tension | null;
+  readonly loadCell: LoadCellResult | null;
   readonly findings: Finding[];
 }
 
@@ -30,7 +33,8 @@ export function numbers(input: NumbersInput): Numbers {
   const { common, gravity, sheet } = input;
   const usable = input.tracks.filter((t) => t.timeS.length >= leastPoints);
   const unfit = methodProblem(sheet.motion, usable, common.frameTimeS);
-  if (unfit) return { motion: {}, keyValues: [], theory: [], findings: [unfit] };
+  if (unfit)
+    return { motion: {}, keyValues: [], theory: [], tension: null, loadCell: null, findings: [unfit] };
   const method = methodOf(sheet.motion, adaptive);
   const { releases, extension, fall, keyValues, findings } = eventsOf({ ...input, tracks: usable });
 
@@ -84,10 +88,28 @@ export function numbers(input: NumbersInput): Numbers {
     findings.push(...found.findings);
   }
 
+  const tip = usable.find((t) => t.role === 'tip');
+  const [release, motion] = [tip && releases.get(tip.bodyId), tip && motions.get(tip.bodyId)];
+  const forces =
+    release && motion
+      ? tipForces({
+          sheet,
+          gravity,
+          uLengthRel: uLengthRel(common),
+          release,
+          extensionS: extension?.timeS ?? null,
+          motion,
+          record: input.forceRecord ?? null,
+        })
+      : null;
+  findings.push(...(forces?.findings ?? []));
+
   return {
     motion: Object.fromEntries(Array.from(motions, ([id, m]) => [id, withBand(m, sheet.motion)])),
     keyValues,
     theory,
+    tension: forces?.tension ?? null,
+    loadCell: forces?.loadCell ?? null,
     findings,
   };
 }

@@ -119,6 +119,8 @@ const theory = z.object({
   chiSquared: z.number(),
   dof: z.number(),
   curve: z.object({ timeS: numbers, yM: numbers, vyMps: numbers, ayMps2: numbers }),
+  /** What the model says the tether pulls with at the curve's times: on the anchor and on the falling arm [N]. */
+  forces: z.object({ anchorN: numbers, foldN: numbers }).optional(),
   /** Akaike's information criterion with the correction for few points: the smaller the better, 10 more is decisive. */
   aicc: z.number().optional(),
   /** What settles a parameter: the footage, the sheet, both, nothing; or it was held. */
@@ -139,6 +141,34 @@ const theory = z.object({
       }),
     )
     .optional(),
+});
+
+/** What the tether pulls with, from the tip's motion and the masses; uncertainties are standard ones. */
+const tension = z.object({
+  timeS: numbers,
+  /** Pull on the anchor, and pull of the fold on the falling arm [N]. */
+  anchorN: numbers,
+  uAnchorN: numbers,
+  foldN: numbers,
+  uFoldN: numbers,
+  /** Energy that the fall has set free and the motion does not have [J]. */
+  energyLostJ: numbers,
+  uEnergyLostJ: numbers,
+});
+
+/** A load cell's record on the footage's clock, held against the pull on the anchor. */
+const loadCellResult = z.object({
+  /** To be added to the record's times [s]. */
+  offsetS: z.number(),
+  uOffsetS: z.number(),
+  correlation: z.number(),
+  samplingRateHz: z.number(),
+  channelFrequencyClass: z.number(),
+  timeS: numbers,
+  forceN: numbers,
+  rmsDifferenceN: z.number(),
+  /** Root mean square of the differences, each divided by its standard uncertainty. */
+  rmsStandardised: z.number(),
 });
 
 const verdict = z.object({
@@ -171,6 +201,9 @@ export const resultSchema = z.object({
   motion: z.record(z.string(), motion),
   keyValues: z.array(keyValue),
   theory: z.array(theory),
+  /** Absent without a tether whose mass is stated. */
+  tension: tension.optional(),
+  loadCell: loadCellResult.optional(),
   verdicts: z.array(verdict),
   findings: z.array(findingSchema),
 });
@@ -183,4 +216,6 @@ export type BodyInFrame = z.output<typeof bodyInFrame>;
 export type Motion = z.output<typeof motion>;
 export type KeyValue = z.output<typeof keyValue>;
 export type Theory = z.output<typeof theory>;
+export type Tension = z.output<typeof tension>;
+export type LoadCellResult = z.output<typeof loadCellResult>;
 export type Verdict = z.output<typeof verdict>;

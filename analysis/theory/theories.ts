@@ -6,8 +6,9 @@ import { admitted } from './admitted.ts';
 import { airOf } from './air.ts';
 import { aicc, comparison, standings } from './compare.ts';
 import { type FittedModel, fitModel, heightsOf } from './fitModel.ts';
+import { foldedForces } from './foldedTether.ts';
 import { inMetres, type Stretch } from './measure.ts';
-import type { Model, Stated } from './models/model.ts';
+import type { Fall, Model, Stated, Values } from './models/model.ts';
 import { models } from './models/models.ts';
 import type { LocalGravity } from './normalGravity.ts';
 import { parameterFindings, tetherAssumed } from './theoryFindings.ts';
@@ -135,6 +136,7 @@ function entryOf(fitted: FittedModel, input: TheoryInput, stated: Stated, fitted
       vyMps: Array.from(curve.vyMps),
       ayMps2: Array.from(curve.ayMps2),
     },
+    ...forcesOf(curve, values, stated),
     ...(Number.isFinite(aicc(fitted)) ? { aicc: aicc(fitted) } : {}),
     settledBy: { ...settledBy },
     correlation: {
@@ -150,6 +152,20 @@ function entryOf(fitted: FittedModel, input: TheoryInput, stated: Stated, fitted
           }),
         }
       : {}),
+  };
+}
+
+/** Pull on anchor and falling arm after a folded tether's model; nothing where the tether's mass is not stated. */
+function forcesOf({ yM, vyMps }: Fall, values: Values, { tether, gravity }: Stated): Pick<Theory, 'forces'> {
+  const { energyShare, lengthM, lengthScale, timeScale, startYM, gMps2 } = values;
+  if (energyShare === undefined || tether?.massKg == null) return {};
+  const weightN = tether.massKg * gravity.gMps2;
+  const pulls = Array.from(yM, (y, i) => {
+    const speed = Math.abs(vyMps[i]) / (lengthScale * timeScale * Math.sqrt(gMps2 * lengthM));
+    return foldedForces(energyShare, (startYM - y) / (lengthScale * lengthM), speed);
+  });
+  return {
+    forces: { anchorN: pulls.map((p) => weightN * p.anchor), foldN: pulls.map((p) => weightN * p.fold) },
   };
 }
 

@@ -50,8 +50,12 @@ function reduceOrder(json: unknown, folder: string | null): ReduceOrder {
   return { sheet, sheetSha256, folder: folder ?? '', findings };
 }
 
-function refuseRelativePaths({ footage, clock }: Sheet): void {
-  const paths = clock.kind === 'timestamps' ? [footage.path, clock.path] : [footage.path];
+function refuseRelativePaths({ footage, clock, loadCell }: Sheet): void {
+  const paths = [
+    footage.path,
+    ...(clock.kind === 'timestamps' ? [clock.path] : []),
+    ...(loadCell ? [loadCell.path] : []),
+  ];
   const wrong = paths.find((path) => !isAbsolute(path));
   if (wrong !== undefined)
     throw new Refusal(

@@ -9,11 +9,12 @@ import type { Sheet } from '../../analysis/sheet/sheet.ts';
  */
 export function sheetForFolder(sheet: Sheet, from: string | null, to: string): Sheet {
   const moved = (path: string) => pathForFolder(path, from ?? to, to);
-  const { clock, footage } = sheet;
+  const { clock, footage, loadCell } = sheet;
   return {
     ...sheet,
     footage: { ...footage, path: moved(footage.path) },
     clock: clock.kind === 'timestamps' ? { ...clock, path: moved(clock.path) } : clock,
+    ...(loadCell ? { loadCell: { ...loadCell, path: moved(loadCell.path) } } : {}),
   };
 }
 
