@@ -1,6 +1,6 @@
-import { linearisedByDifferences } from '../fit/differences.ts';
 import { leastSquares } from '../fit/leastSquares.ts';
 import { unbounded } from '../fit/problem.ts';
+import { differenced } from './differenced.ts';
 import { farthestCornerPx, foldRadiusPx } from './lensFolds.ts';
 import type { PlanePoint } from './planePoint.ts';
 import { type Lens, undistort } from './undistort.ts';
@@ -45,14 +45,14 @@ function fitted(
   const points = lines.reduce((s, line) => s + line.length, 0);
   const dof = points - 2 * lines.length - order;
   if (dof < 1) return { reason: 'they have too few points: give three or more lines with five points each' };
-  // The parameters are 1 + k: differences step by a share of a parameter, and k may be next to nothing.
+  // The parameters are 1 + k: whether a step still counts is judged by the parameter, and k may be next to nothing.
   const lensBy = (p: Float64Array): Lens => ({ ...base, k1: p[0] - 1, k2: order === 2 ? p[1] - 1 : 0 });
   const residuals = (p: Float64Array) => Float64Array.from(lines.flatMap((line) => offLine(line, lensBy(p))));
   const solved = leastSquares({
     start: new Float64Array(order).fill(1),
     bounds: unbounded(order),
     residuals,
-    linearised: (p) => linearisedByDifferences(residuals, p),
+    linearised: (p) => differenced(residuals, p),
   });
   if ('reason' in solved) return solved;
   const { parameters, covariance, chiSquared } = solved;
