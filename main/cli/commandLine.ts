@@ -2,6 +2,7 @@ import { Command } from 'commander';
 import { program } from '../program.ts';
 import { addCheck } from './check.ts';
 import { addDemo } from './demo.ts';
+import { addLens } from './lens.ts';
 import { addLogList } from './logList.ts';
 import { addLogShow } from './logShow.ts';
 import { addLogVerify } from './logVerify.ts';
@@ -34,6 +35,7 @@ export async function commandLine(args: readonly string[]): Promise<number> {
   addReduce(root);
   addCheck(root);
   addPlan(root);
+  addLens(root);
   addDemo(root);
   const log = root.command('log').description('look into the log: the reductions that were saved');
   addLogList(log);
