@@ -1,15 +1,18 @@
 import { clockFindings } from './clock/clockFindings.ts';
 import { rowTime } from './clock/rowTime.ts';
-import { asGravity, fallAsBar, pixelBar, withoutGravityCheck } from './gravity/fallAsBar.ts';
+import { asGravity, ballIn, fallAsBar, pixelBar, withoutGravityCheck } from './gravity/fallAsBar.ts';
+import { mainFall } from './gravity/mainFall.ts';
+import { pitchFromFall } from './gravity/pitchFromFall.ts';
 import { numbers } from './keyValues/numbers.ts';
 import type { WorldTrack } from './motion/worldTrack.ts';
-import { type Calibration, calibrate } from './scale/calibrate.ts';
+import { type Calibration, calibrate, type Turned } from './scale/calibrate.ts';
 import type { PictureSize } from './scale/lensOf.ts';
 import type { PixelPoint } from './scale/spaces.ts';
 import { type Settled, settle } from './sheet/assumptions.ts';
 import { checkSheet } from './sheet/checkSheet.ts';
 import type { BodyInFrame, Finding, Result, ResultFrame } from './sheet/result.ts';
 import type { Sheet } from './sheet/sheet.ts';
+import { airOf } from './theory/air.ts';
 import type { ForceRecord } from './theory/force/parseForceRecord.ts';
 import { type LocalGravity, siteGravity } from './theory/normalGravity.ts';
 import type { Track } from './track/track.ts';
@@ -43,7 +46,17 @@ export function reduce(input: ReduceInput): Result {
   const fromGravity = needsGravity(sheet)
     ? scaleOfFall(sheet, settled, { origin, picture }, gravity, tracksBy)
     : null;
-  const calibration = calibrate(sheet, fromGravity?.settled ?? settled, origin, picture);
+  const turned =
+    sheet.scale.pitchFromFall && !fromGravity
+      ? pitchOfFall(sheet, settled, { origin, picture }, gravity, tracksBy)
+      : null;
+  const calibration = calibrate(
+    sheet,
+    fromGravity?.settled ?? settled,
+    origin,
+    picture,
+    turned?.pitch ?? undefined,
+  );
   // A fall that gives no scale leaves nothing in metres: no track is better than one in unknown units.
   const worldTracks = fromGravity?.found === false ? [] : tracksBy(calibration);
 
@@ -82,6 +95,7 @@ export function reduce(input: ReduceInput): Result {
       ...settled.findings,
       ...siteFindings(sheet),
       ...(fromGravity ? [fromGravity.finding] : []),
+      ...(turned ? [turned.finding] : []),
       ...calibration.findings,
       ...trackFindings(tracks, sheet.bodies),
       ...clockFindings({
@@ -124,6 +138,45 @@ function scaleOfFall(
     text: 'scale.fromGravity: the reference body is not seen to fall far enough to give the scale; film a scale bar.',
   };
   return { settled: { ...inPlane, bars: [pixelBar] }, finding, found: false };
+}
+
+/** The camera's pitch by the reference body's fall (`scale.pitchFromFall`); without one the assumption stays. */
+function pitchOfFall(
+  sheet: Sheet,
+  settled: Settled,
+  { origin, picture }: { origin: { x: number; y: number }; picture: PictureSize },
+  gravity: LocalGravity,
+  tracksBy: (calibration: Calibration) => WorldTrack[],
+): { pitch: Turned | null; finding: Finding } {
+  const trackAt = (pitchRad: number) =>
+    tracksBy(calibrate(sheet, settled, origin, picture, { pitchRad, uPitchRad: 0 })).find(
+      (t) => t.role === 'reference',
+    );
+  const level = trackAt(0);
+  const fall = level && mainFall(level);
+  const ball = ballIn(sheet);
+  const found =
+    level && fall && ball
+      ? pitchFromFall({
+          afterS: Float64Array.from(fall.used, (i) => level.timeS[i] - fall.restS),
+          uYM: Float64Array.from(fall.used, (i) => level.uYM[i]),
+          heightsAt: (pitchRad) => {
+            const yM = trackAt(pitchRad)?.yM ?? level.yM;
+            return Float64Array.from(fall.used, (i) => yM[i]);
+          },
+          ball,
+          air: airOf(sheet.ambient),
+          localGMps2: gravity.gMps2,
+        })
+      : null;
+  const degrees = 180 / Math.PI;
+  if (!found) {
+    const text = `scale.pitchFromFall: the reference body's fall gives no pitch of the camera; ${(settled.turn.uPitchRad * degrees).toPrecision(2)}° either way was assumed. Film more of its fall, or state scale.pitchDeg.`;
+    return { pitch: null, finding: { level: 'caution', code: 'pitchNotFromFall', text } };
+  }
+  const { pitchRad, uPitchRad } = found;
+  const text = `The camera looks ${(pitchRad * degrees).toFixed(3)}° ± ${(uPitchRad * degrees).toFixed(3)}° (k = 1) down on the plane of the fall, found from the reference body's fall; its drag was taken as known.`;
+  return { pitch: { pitchRad, uPitchRad }, finding: { level: 'note', code: 'pitchFromFall', text } };
 }
 
 function siteFindings(sheet: Sheet): Finding[] {

@@ -26,7 +26,7 @@ export const pixelBar: Bar = {
 };
 
 /** What the sheet says of the reference body, where drag and buoyancy can be taken into account. */
-function ballIn(sheet: Sheet): StatedBall | null {
+export function ballIn(sheet: Sheet): StatedBall | null {
   const body = sheet.bodies.find((b) => b.role === 'reference');
   if (body?.diameterM === undefined || body.massKg === undefined) return null;
   return { ...body, diameterM: body.diameterM, massKg: body.massKg };
