@@ -2,12 +2,10 @@ import type { BallFall } from '../motion/ballFall.ts';
 import type { Common } from '../motion/worldTrack.ts';
 import type { Finding, KeyValue } from '../sheet/result.ts';
 import type { LocalGravity } from '../theory/normalGravity.ts';
+import { uSphereDragRel } from '../theory/sphereDrag.ts';
 import { formatMeasured } from '../uncertainty/formatMeasured.ts';
 import { measured } from '../uncertainty/measured.ts';
 import { commonSources } from './commonSources.ts';
-
-/** Standard uncertainty of the drag of a smooth sphere against the standard curve: correlations differ by so much. */
-const uDragRel = 0.1;
 
 /** ball.g: acceleration of the reference body, freed from drag and buoyancy where diameter and mass are stated. */
 export function gravityOf(fall: BallFall, common: Common): KeyValue {
@@ -19,7 +17,7 @@ export function gravityOf(fall: BallFall, common: Common): KeyValue {
     [
       ...commonSources(common, g, { length: 1, time: -2 }),
       { source: 'positions', u: fall.uFitMps2, dof: fall.dof },
-      { source: 'drag of the ball', u: Math.abs(fall.perDragMps2 * uDragRel) / 0.1 },
+      { source: 'drag of the ball', u: Math.abs(fall.perDragMps2 * uSphereDragRel) / 0.1 },
       // Down known to u: the fall along it is shorter by the cosine, g u²/2 on average; taken as a standard uncertainty.
       { source: 'direction of down', u: (g * common.uDownRad ** 2) / 2 },
     ],

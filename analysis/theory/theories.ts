@@ -5,6 +5,7 @@ import type { Sheet } from '../sheet/sheet.ts';
 import { admitted } from './admitted.ts';
 import { airOf } from './air.ts';
 import { aicc, comparison, standings } from './compare.ts';
+import { contradicted } from './contradicted.ts';
 import { type FittedModel, fitModel, heightsOf } from './fitModel.ts';
 import { foldedForces } from './foldedTether.ts';
 import { inMetres, type Stretch } from './measure.ts';
@@ -49,9 +50,9 @@ export function theories(input: TheoryInput): Theories {
   const stated = statedOf(input);
   const { chosen, findings } = admitted(models, stated, input.settings);
   const measure = inMetres(input.track, stretchOf(input, stated));
+  const setting = { ...input, robust: input.settings?.robust ?? null };
   const fits: FittedModel[] = [];
   for (const model of chosen) {
-    const setting = { ...input, robust: input.settings?.robust ?? null };
     const starts = fits.filter((f) => f.model.specialCaseOf.includes(model.name)).map((f) => f.values);
     const fitted = fitModel(model, stated, measure, setting, starts);
     if ('reason' in fitted) findings.push(notFitted(model, input.body.id, fitted.reason));
@@ -60,6 +61,7 @@ export function theories(input: TheoryInput): Theories {
   if (fits.some((f) => f.values.lengthM !== undefined)) findings.push(...tetherAssumed(stated));
   const ranked = standings(fits, measure.timeS);
   findings.push(...comparison(ranked, input.body.id), ...parameterFindings(ranked));
+  findings.push(...contradicted(ranked, stated, measure, setting));
   return { theory: fits.map((fitted) => entryOf(fitted, input, stated, measure.timeS)), findings };
 }
 

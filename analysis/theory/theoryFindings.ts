@@ -26,14 +26,9 @@ export function tetherAssumed({ tether, body }: Stated): Finding[] {
   ];
 }
 
-/**
- * Parameters whose value means nothing, of the models that describe the drop; and statements that the nearest model contradicts where
- * none does.
- */
+/** Parameters whose value means nothing, of the models that describe the drop. */
 export function parameterFindings(ranked: readonly Standing[]): Finding[] {
-  const describing = ranked.filter((s) => s.describes);
-  if (describing.length > 0) return describing.flatMap(({ fitted }) => unsettled(fitted));
-  return ranked.slice(0, 1).flatMap(({ fitted }) => contradicted(fitted));
+  return ranked.filter((s) => s.describes).flatMap(({ fitted }) => unsettled(fitted));
 }
 
 function unsettled({ model, parameters, settledBy, solution }: FittedModel): Finding[] {
@@ -47,20 +42,6 @@ function unsettled({ model, parameters, settledBy, solution }: FittedModel): Fin
       level: 'note',
       code: 'parameterNotSettled',
       text: `The footage cannot settle ${names.join(' and ')} of ${model.title}: the value means nothing. A longer stretch of the fall, or a statement in the sheet, would.`,
-    },
-  ];
-}
-
-function contradicted({ model, parameters, solution }: FittedModel): Finding[] {
-  const names = parameters.flatMap(({ name, meaning, prior }, j) =>
-    prior !== null && prior.u > 0 && solution.atBound[j] ? [`${meaning} (${name})`] : [],
-  );
-  if (names.length === 0) return [];
-  return [
-    {
-      level: 'caution',
-      code: 'statementContradicted',
-      text: `To come near the footage ${model.title} would need ${names.join(' and ')} further from what is stated than five of the stated uncertainties: check the statement, or the model is not this drop's.`,
     },
   ];
 }

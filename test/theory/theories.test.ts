@@ -141,7 +141,9 @@ describe('theories', () => {
     expect(text).toMatch(
       /^No model describes the fall of "tip" within its uncertainty; the nearest is the energy form/,
     );
-    expect(text).toMatch(/would need .*the length of the tether \(lengthM\)/);
+    expect(text).toMatch(
+      /With the length of the tether \(lengthM\) 0\.9\d+ ± 0\.\d+ m instead of 0\.9 m as stated the energy form would describe/,
+    );
   });
 
   it('hold only the models that the sheet asks for, and refuse bounds that exclude them all', () => {

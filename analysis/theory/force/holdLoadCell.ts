@@ -1,6 +1,7 @@
 import { triangular } from '../../fit/triangular.ts';
 import type { LoadCell } from '../../sheet/loadCell.ts';
 import type { Finding, LoadCellResult, Tension } from '../../sheet/result.ts';
+import { forceNoise } from './forceNoise.ts';
 import type { ForceRecord } from './parseForceRecord.ts';
 import { forceAt, synchronise } from './synchronise.ts';
 
@@ -49,6 +50,7 @@ export function holdLoadCell(
     return { loadCell: null, findings };
   }
   const { offsetS, correlation } = together;
+  const noiseN = forceNoise(record);
   const forceN = forceAt(
     record,
     tension.timeS.map((t) => t - offsetS),
@@ -56,11 +58,11 @@ export function holdLoadCell(
   const kept = forceN.flatMap((f, i) => (Number.isFinite(f) ? [i] : []));
   const differenceN = kept.map((i) => forceN[i] - tension.anchorN[i]);
   const standardised = kept.map(
-    (i, k) => differenceN[k] / Math.hypot(tension.uAnchorN[i], uForceRel * forceN[i]),
+    (i, k) => differenceN[k] / Math.hypot(tension.uAnchorN[i], noiseN, uForceRel * forceN[i]),
   );
   const loadCell: LoadCellResult = {
     offsetS,
-    uOffsetS: offsetUncertainty(tension, stated.samplingRateHz),
+    uOffsetS: offsetUncertainty(tension, noiseN, stated.samplingRateHz),
     correlation,
     samplingRateHz: stated.samplingRateHz,
     channelFrequencyClass: stated.channelFrequencyClass,
@@ -99,12 +101,17 @@ function samplingFindings(
  * Standard uncertainty of a shift between two curves of which one has an unknown gain and zero: the part of the slope that neither
  * a constant nor the curve itself can take up is what tells the shift (weighted regression). A sample's width, rectangular, is added.
  */
-function offsetUncertainty({ timeS, anchorN, uAnchorN }: Tension, samplingRateHz: number): number {
+function offsetUncertainty(
+  { timeS, anchorN, uAnchorN }: Tension,
+  noiseN: number,
+  samplingRateHz: number,
+): number {
+  const u = uAnchorN.map((own) => Math.hypot(own, noiseN));
   const inner = timeS.slice(1, -1).map((_, k) => k + 1);
   const columns = [
-    inner.map((i) => 1 / uAnchorN[i]),
-    inner.map((i) => anchorN[i] / uAnchorN[i]),
-    inner.map((i) => (anchorN[i + 1] - anchorN[i - 1]) / (timeS[i + 1] - timeS[i - 1]) / uAnchorN[i]),
+    inner.map((i) => 1 / u[i]),
+    inner.map((i) => anchorN[i] / u[i]),
+    inner.map((i) => (anchorN[i + 1] - anchorN[i - 1]) / (timeS[i + 1] - timeS[i - 1]) / u[i]),
   ].map((column) => Float64Array.from(column));
   // The last diagonal of the triangle is what is left of the slope.
   const { r } = triangular(columns, new Float64Array(inner.length));

@@ -1,5 +1,6 @@
 import type { LoadCell } from '../../sheet/loadCell.ts';
 import type { Tension } from '../../sheet/result.ts';
+import { forceNoise } from './forceNoise.ts';
 import type { ForceRecord } from './parseForceRecord.ts';
 
 export interface Synchronised {
@@ -21,9 +22,10 @@ export function synchronise(
   extensionS: number | null,
   how: LoadCell['synchronisation'],
 ): Synchronised | null {
+  const noiseN = forceNoise(record);
   const at = (offsetS: number): Synchronised => ({
     offsetS,
-    correlation: likeness(record, tension, offsetS),
+    correlation: likeness(record, tension, noiseN, offsetS),
   });
   if (how.kind === 'offset') return at(how.offsetS);
   if (how.kind === 'peak') {
@@ -60,8 +62,13 @@ function bestOf(at: (offsetS: number) => Synchronised, from: number, to: number,
   return best;
 }
 
-/** Correlation of the record with the tension at the tension's times, each point counted by its uncertainty. */
-function likeness(record: ForceRecord, { timeS, anchorN, uAnchorN }: Tension, offsetS: number): number {
+/** Correlation of the record with the tension at the tension's times, each point counted by its noise in both. */
+function likeness(
+  record: ForceRecord,
+  { timeS, anchorN, uAnchorN }: Tension,
+  noiseN: number,
+  offsetS: number,
+): number {
   const force = forceAt(
     record,
     timeS.map((t) => t - offsetS),
@@ -69,7 +76,7 @@ function likeness(record: ForceRecord, { timeS, anchorN, uAnchorN }: Tension, of
   let [w, a, b, aa, bb, ab] = [0, 0, 0, 0, 0, 0];
   force.forEach((f, i) => {
     if (!Number.isFinite(f)) return;
-    const weight = 1 / uAnchorN[i] ** 2;
+    const weight = 1 / (uAnchorN[i] ** 2 + noiseN ** 2);
     w += weight;
     a += weight * f;
     b += weight * anchorN[i];

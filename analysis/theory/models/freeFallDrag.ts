@@ -28,7 +28,10 @@ export const withDrag: Model = {
             : "the drag's share of the stated coefficient",
         start: 1,
         bounds: [0, 10],
-        prior: { value: 1, u: drag === undefined ? uSphereDragRel : (body.uDragCoefficient ?? 0) / drag },
+        prior: {
+          value: 1,
+          u: drag === undefined ? uSphereDragRel : (body.uDragCoefficient ?? uSphereDragRel * drag) / drag,
+        },
       },
       {
         name: 'airDensityKgpm3',
