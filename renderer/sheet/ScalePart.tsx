@@ -4,7 +4,9 @@ import {
   assumedUDownDeg,
   assumedULengthM,
   assumedUMarkPx,
+  assumedUPitchDeg,
   assumedUPlaneOffsetM,
+  assumedUYawDeg,
 } from '../state/assumed.ts';
 import { draft, setField } from '../state/draft.ts';
 import { MarkButton } from './MarkButton.tsx';
@@ -12,17 +14,26 @@ import { MeasuredField } from './MeasuredField.tsx';
 import { NumberField } from './NumberField.tsx';
 import { Part } from './Part.tsx';
 
-const planeFields = ['scale.planeOffsetM', 'scale.uPlaneOffsetM', 'scale.cameraDistanceM'];
+const planeFields = [
+  'planeOffsetM',
+  'uPlaneOffsetM',
+  'cameraDistanceM',
+  'pitchDeg',
+  'uPitchDeg',
+  'yawDeg',
+  'uYawDeg',
+  'pitchFromFall',
+].map((name) => `scale.${name}`);
 
 export function ScalePart() {
-  const { bars, plumb, fiducials, cameraDistanceM } = draft.value.scale;
+  const { bars, plumb, fiducials, cameraDistanceM, pitchFromFall } = draft.value.scale;
   const { origin } = draft.value;
   const barFields = bars.flatMap((_, i) =>
     ['lengthM', 'uLengthM', 'uMarkPx'].map((name) => `scale.bars[${i}].${name}`),
   );
   return (
     <Part name="scale" title="Scale" ownFields={[...barFields, ...planeFields]}>
-      {bars.map((_, i) => (
+      {bars.map((bar, i) => (
         <fieldset key={i}>
           <legend>Scale bar{bars.length > 1 ? ` ${i + 1}` : ''}</legend>
           <div class="mark-row">
@@ -47,6 +58,16 @@ export function ScalePart() {
               isU
             />
           </div>
+          <label>
+            <input
+              type="checkbox"
+              checked={bar.refine === true}
+              onChange={(event) =>
+                setField(`scale.bars[${i}].refine`, event.currentTarget.checked || undefined)
+              }
+            />{' '}
+            Find the centres of its targets
+          </label>
           {bars.length > 1 ? (
             <button
               type="button"
@@ -90,9 +111,7 @@ export function ScalePart() {
       ) : null}
       <NumberField field="scale.cameraDistanceM" label="Camera to bar" unit="m" />
       {cameraDistanceM === undefined ? (
-        <p class="field-caution">
-          Not stated: the bodies' distance from the bar's plane is not in the budget.
-        </p>
+        <p class="field-caution">Not stated: 2.2 heights of the picture are assumed.</p>
       ) : null}
       <MeasuredField
         field="scale.planeOffsetM"
@@ -102,6 +121,39 @@ export function ScalePart() {
         unit="m"
         assumed={String(assumedPlaneOffsetM)}
         assumedU={String(assumedUPlaneOffsetM)}
+      />
+      <label>
+        <input
+          type="checkbox"
+          checked={pitchFromFall === true}
+          onChange={(event) => {
+            const isFound = event.currentTarget.checked;
+            setField('scale.pitchFromFall', isFound || undefined);
+            // A pitch that is found has its own uncertainty; a stated one would contradict it.
+            if (isFound) setField('scale.uPitchDeg', undefined);
+          }}
+        />{' '}
+        Find the camera's pitch from the reference body's fall
+      </label>
+      {pitchFromFall ? null : (
+        <MeasuredField
+          field="scale.pitchDeg"
+          u="scale.uPitchDeg"
+          label="Camera pitch"
+          title="How far the camera looks down on the plane of the fall (+); 1° at 2 m is 0.43 % of g"
+          unit="°"
+          assumed="0"
+          assumedU={assumedUPitchDeg.toFixed(1)}
+        />
+      )}
+      <MeasuredField
+        field="scale.yawDeg"
+        u="scale.uYawDeg"
+        label="Camera yaw"
+        title="How far the camera is turned so that the left side of the plane is nearer (+)"
+        unit="°"
+        assumed="0"
+        assumedU={assumedUYawDeg.toFixed(1)}
       />
     </Part>
   );

@@ -3,6 +3,7 @@ import { pxText } from '../parts/numberText.ts';
 import { shownFrame } from '../state/frames.ts';
 import { pointerAt, selectedMark } from '../state/marks.ts';
 import { paintLuma } from './paintLuma.ts';
+import { RefinedPlace } from './RefinedPlace.tsx';
 
 const sidePx = 21;
 const magnification = 9;
@@ -35,6 +36,7 @@ export function Loupe({ onLeft }: { readonly onLeft: boolean }) {
           <output class="loupe-place">
             x {pxText(at.x)}&ensp;y {pxText(at.y)} px
           </output>
+          <RefinedPlace />
           <div class="hint">Arrows 1 px, Shift 0.1 px; {magnification}×</div>
         </>
       ) : (

@@ -20,4 +20,6 @@ export const assumedULengthM = silent.bars[0]?.uLengthM;
 export const assumedUMarkPx = silent.bars[0]?.uMarkPx;
 export const assumedPlaneOffsetM = silent.planeOffsetM;
 export const assumedUPlaneOffsetM = silent.uPlaneOffsetM;
+export const assumedUPitchDeg = (silent.turn.uPitchRad * 180) / Math.PI;
+export const assumedUYawDeg = (silent.turn.uYawRad * 180) / Math.PI;
 export const assumedUDownDeg = (silent.uDownWithoutPlumbRad * 180) / Math.PI;

@@ -26,6 +26,12 @@ export interface Draft {
     readonly planeOffsetM?: number;
     readonly uPlaneOffsetM?: number;
     readonly cameraDistanceM?: number;
+    readonly pitchDeg?: number;
+    readonly uPitchDeg?: number;
+    readonly yawDeg?: number;
+    readonly uYawDeg?: number;
+    readonly pitchFromFall?: true;
+    readonly fromGravity?: true;
   };
   readonly origin?: Point;
   readonly siteBy: 'gravity' | 'place';
@@ -60,6 +66,8 @@ interface DraftBar {
   readonly lengthM?: number;
   readonly uLengthM?: number;
   readonly uMarkPx?: number;
+  /** The reduction looks for the centres of the targets at the marks. */
+  readonly refine?: boolean;
 }
 
 export interface DraftBody {

@@ -28,6 +28,12 @@ export function sheetJson(draft: Draft): Record<string, unknown> {
       ...optional('planeOffsetM', scale.planeOffsetM),
       ...optional('uPlaneOffsetM', scale.uPlaneOffsetM),
       ...optional('cameraDistanceM', scale.cameraDistanceM),
+      ...optional('pitchDeg', scale.pitchDeg),
+      ...optional('uPitchDeg', scale.uPitchDeg),
+      ...optional('yawDeg', scale.yawDeg),
+      ...optional('uYawDeg', scale.uYawDeg),
+      ...optional('pitchFromFall', scale.pitchFromFall),
+      ...optional('fromGravity', scale.fromGravity),
     },
     ...optional('origin', draft.origin),
     ...part(
