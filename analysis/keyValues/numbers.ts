@@ -1,4 +1,5 @@
 import { lagOneCorrelation } from '../fit/lagOneCorrelation.ts';
+import { rootMeanSquare } from '../fit/rootMeanSquare.ts';
 import { adaptive } from '../motion/adaptive.ts';
 import type { BodyMotion } from '../motion/bodyMotion.ts';
 import type { Break } from '../motion/breaks.ts';
@@ -63,6 +64,8 @@ export function numbers(input: NumbersInput): Numbers {
     if (!release || !motion || track.role === 'other') continue;
     const end = track.role === 'tip' ? extension?.timeS : fall?.lastS;
     const { measuredYM, yM } = motion.motion;
+    // What the smooth motion leaves is the noise, whatever the theory: no model is refused for a noise that was understated.
+    const scatter = track.yM.map((_, i) => (measuredYM[i] - yM[i]) / track.uYM[i]);
     const found = theories({
       track,
       body,
@@ -79,10 +82,8 @@ export function numbers(input: NumbersInput): Numbers {
       untilS: end ?? track.timeS[track.timeS.length - 1],
       uLengthRel: uLengthRel(common),
       uTimeRel: Math.hypot(...common.time.map((t) => t.uRel)),
-      correlation: lagOneCorrelation(
-        track.yM.map((_, i) => (measuredYM[i] - yM[i]) / track.uYM[i]),
-        track.frame,
-      ),
+      correlation: lagOneCorrelation(scatter, track.frame),
+      noiseOverStated: Math.max(1, rootMeanSquare(scatter) || 1),
     });
     theory.push(...found.theory);
     findings.push(...found.findings);

@@ -20,10 +20,14 @@ export interface Stretch {
   readonly to: number;
 }
 
-/** Heights in metres, as the track has them. */
-export function inMetres(track: WorldTrack, { from, to }: Stretch): Measure {
+/**
+ * Heights in metres, as the track has them.
+ *
+ * @param noiseOverStated  factor on the stated uncertainties where the track scatters more than they say
+ */
+export function inMetres(track: WorldTrack, { from, to }: Stretch, noiseOverStated = 1): Measure {
   const yM = track.yM.slice(from, to);
-  const uYM = track.uYM.slice(from, to);
+  const uYM = track.uYM.slice(from, to).map((u) => u * noiseOverStated);
   return {
     timeS: track.timeS.slice(from, to),
     frame: track.frame.slice(from, to),

@@ -38,6 +38,8 @@ export interface TheoryInput {
   readonly uTimeRel: number;
   /** Correlation of the errors of neighbouring frames. */
   readonly correlation: number;
+  /** Scatter of the positions about their smooth motion over their stated uncertainty, at least 1. */
+  readonly noiseOverStated: number;
 }
 
 export interface Theories {
@@ -49,7 +51,7 @@ export interface Theories {
 export function theories(input: TheoryInput): Theories {
   const stated = statedOf(input);
   const { chosen, findings } = admitted(models, stated, input.settings);
-  const measure = inMetres(input.track, stretchOf(input, stated));
+  const measure = inMetres(input.track, stretchOf(input, stated), input.noiseOverStated);
   const setting = { ...input, robust: input.settings?.robust ?? null };
   const fits: FittedModel[] = [];
   for (const model of chosen) {

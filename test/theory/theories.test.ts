@@ -209,6 +209,15 @@ describe('theories', () => {
     expect(wrong.student).toBeLessThan(4 * u.student);
   });
 
+  it('refuse no model for a noise that was understated, where the scatter shows it', () => {
+    const track = trackOf();
+    const understated = { ...track, uYM: track.uYM.map((u) => u / 3) };
+    const asStated = held(theoryInput(understated), 'foldedTetherEnergy');
+    expect(asStated.text).toMatch(/^No model describes/);
+    const asSeen = held(theoryInput(understated, { noiseOverStated: 3 }), 'foldedTetherEnergy');
+    expect(asSeen.text).toMatch(/^The energy form describes/);
+  });
+
   it('widen what they find when neighbouring frames err alike', () => {
     const white = held(energyDrop, 'foldedTetherEnergy');
     const alike = held(

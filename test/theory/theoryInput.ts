@@ -57,6 +57,7 @@ export function theoryInput(track: WorldTrack, rest: Partial<TheoryInput> = {}):
     uLengthRel: 0.001,
     uTimeRel: 1e-5,
     correlation: 0,
+    noiseOverStated: 1,
     ...rest,
   };
 }

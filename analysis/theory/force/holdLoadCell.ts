@@ -1,3 +1,4 @@
+import { rootMeanSquare } from '../../fit/rootMeanSquare.ts';
 import { triangular } from '../../fit/triangular.ts';
 import type { LoadCell } from '../../sheet/loadCell.ts';
 import type { Finding, LoadCellResult, Tension } from '../../sheet/result.ts';
@@ -68,8 +69,8 @@ export function holdLoadCell(
     channelFrequencyClass: stated.channelFrequencyClass,
     timeS: kept.map((i) => tension.timeS[i]),
     forceN: kept.map((i) => forceN[i]),
-    rmsDifferenceN: rms(differenceN),
-    rmsStandardised: rms(standardised),
+    rmsDifferenceN: rootMeanSquare(differenceN),
+    rmsStandardised: rootMeanSquare(standardised),
   };
   findings.push(...agreement(loadCell, stated), ...bandwidthFinding(stated, bandwidthHz));
   return { loadCell, findings };
@@ -157,6 +158,3 @@ function bandwidthFinding({ channelFrequencyClass }: LoadCell, bandwidthHz: numb
     },
   ];
 }
-
-const rms = (values: readonly number[]) =>
-  Math.sqrt(values.reduce((sum, v) => sum + v * v, 0) / values.length);
