@@ -4,7 +4,7 @@ import type { PlanePoint } from './planePoint.ts';
 const leastSpreadShare = 0.05;
 
 /** Spread of points across their best line as a share of that along it: 0 on a line, 1 for a square. */
-export function spreadShare(points: readonly PlanePoint[]): number {
+function spreadShare(points: readonly PlanePoint[]): number {
   const n = points.length;
   const [mx, my] = [points.reduce((s, p) => s + p.x, 0) / n, points.reduce((s, p) => s + p.y, 0) / n];
   let [xx, xy, yy] = [0, 0, 0];
