@@ -1,4 +1,4 @@
-import { longestGap, type Sighting } from './follow.ts';
+import { longestGap, type Sighting } from './sighting.ts';
 
 /** Sightings on either side of a gap that the bridge rests on. */
 const abutment = 6;

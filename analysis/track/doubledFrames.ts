@@ -1,4 +1,4 @@
-import type { Sighting } from './follow.ts';
+import type { Sighting } from './sighting.ts';
 
 /** A body that goes less than this from frame to frame may look the same in two frames without one being a copy [px]. */
 const leastStepPx = 0.3;

@@ -2,40 +2,18 @@ import type { BodyState } from '../sheet/result.ts';
 import { blurModel } from './blur.ts';
 import { type BodyView, withoutCovered } from './bodyView.ts';
 import { startCuttings } from './cuttings.ts';
-import { makeLayer, makeSampler, sampledFor } from './layer.ts';
-import type { StillBody } from './learnBody.ts';
+import { makeLayer, makeSampler, sampledFor, type WindowPoint } from './layer.ts';
+import { cutPlate, type StillBody } from './learnBody.ts';
 import { startLearner } from './learner.ts';
 import { lookAgain } from './lookAgain.ts';
 import { type BodyModel, type Match, makeMatcher, type Plate } from './match.ts';
 import { cutOut, roundMask } from './patchModel.ts';
 import { brightnessOf } from './plate.ts';
-import { predict } from './predict.ts';
+import { asAtRest, centreOf, type Pose, posedModel } from './pose.ts';
+import { predict, predictLine } from './predict.ts';
+import { leastScore, longestGap, type PlacedBody, type Sighting } from './sighting.ts';
 import type { Picture, WideSearch } from './track.ts';
 import { makeTurnGauge } from './turning.ts';
-
-/** A body as it was placed. */
-export interface PlacedBody {
-  readonly id: string;
-  readonly frame: number;
-  readonly xPx: number;
-  readonly yPx: number;
-  readonly patchPx: number;
-  /** Places set by hand in later frames; they win. */
-  readonly marks: readonly { readonly frame: number; readonly xPx: number; readonly yPx: number }[];
-  /** Standard uncertainty of a place set by hand [px]. */
-  readonly uMarkPx: number;
-}
-
-/** Where a body was found in one frame. */
-export interface Sighting {
-  readonly n: number;
-  readonly state: BodyState;
-  readonly xPx: number;
-  readonly yPx: number;
-  readonly uXPx: number;
-  readonly uYPx: number;
-  readonly score: number;
-}
 
 export interface Follower {
   /**
@@ -70,14 +48,12 @@ export interface Expected extends PlaceOfZero {
 const nextFrom = 3;
 /** Places of which a prediction across a gap is made: there noise counts for more than the change of acceleration. */
 const acrossGapFrom = 8;
-/** A body out of sight for longer is lost: what comes back may be another. */
-export const longestGap = 20;
-/** Below this the patch is not the body, whatever the light. */
-export const leastScore = 0.5;
 /** By so much the usual score sinks before a body is taken to turn. */
 const turningFall = 0.01;
 /** … if the residual looks like a turn by at least this much. */
 const turnLikeness = 0.4;
+/** By so much more it sinks, with turn and growth in the model, before its look is taken to change in another way. */
+const changingFall = 0.03;
 /** Light on a body changes by less than this factor from frame to frame; noise fitted as the body has hardly any contrast. */
 const leastGain = 0.4;
 /** A score that falls by this much, or a body this far from where it was expected, asks for a wide search to be sure. */
@@ -117,6 +93,7 @@ export function startFollower(
   const markY = body.yPx - centreY;
   const learner = plate ? startLearner(still, plate) : null;
   const usedPlate = learner ? plate : null;
+  const meanBehind = usedPlate ? meanOf(cutPlate(usedPlate, centreX, centreY, half)) : 0;
   let model = learner?.model() ?? meanPatchModel(still);
   const patch = patchPicture(first, centreX, centreY, half);
   // The rest frames' mean carries noise of its own, the same in all frames.
@@ -128,9 +105,15 @@ export function startFollower(
   let usualScore = 1;
   const gauge = makeTurnGauge(half);
   let bestScore = 0;
-  let turning = false;
-  /** Sightings up to which the body looked as at rest: these can be matched again with one model. */
+  /** Where the body turns about, once it does; its look can change in other ways too, and is then followed by a running mean. */
+  let turnsAbout: WindowPoint | null = null;
+  let centre: WindowPoint | null = null;
+  let changing = false;
+  const poses = new Map<number, Pose>();
+  const poseOf = (n: number) => poses.get(n) ?? asAtRest;
+  /** Sightings up to which the body looked as at rest, and up to which turn and growth were all that changed it. */
   let steady = 0;
+  let followable = 0;
   let lost = false;
 
   const remember = (n: number, x: number, y: number) => {
@@ -160,11 +143,31 @@ export function startFollower(
     return { x, y, gap, radiusPx };
   };
 
+  /** Turns go on as they did over the last frames. */
+  const predictedPose = (n: number): Pose => {
+    const seen = frames.slice(-nextFrom);
+    const of = (value: (pose: Pose) => number) =>
+      seen.length < 2
+        ? value(poseOf(seen[0]))
+        : predictLine(
+            seen,
+            seen.map((f) => value(poseOf(f))),
+            n,
+          );
+    return { turnRad: of((p) => p.turnRad), growth: of((p) => p.growth) };
+  };
+
   /** The best acceptable match near where the body is expected. */
   const look = (picture: Picture, n: number, behind: Plate | null, brightness: number): Match | null => {
     const { x: px, y: py, gap, radiusPx } = predicted(n);
-    const blurred = blurModel(model, px.rate * exposureShare, py.rate * exposureShare);
-    const near = matcher.match(picture, blurred, px.value, py.value, noise, behind, brightness);
+    const pose = turnsAbout ? predictedPose(n) : asAtRest;
+    const posed = turnsAbout ? posedModel(model, pose, turnsAbout) : model;
+    const blurred = blurModel(posed, px.rate * exposureShare, py.rate * exposureShare);
+    const match = (x: number, y: number): Match | null => {
+      const m = matcher.match(picture, blurred, x, y, noise, behind, brightness, turnsAbout);
+      return m && { ...m, turnRad: pose.turnRad + m.turnRad, growth: pose.growth + m.growth };
+    };
+    const near = match(px.value, py.value);
     const offPx = near ? Math.hypot(near.xPx - px.value, near.yPx - py.value) : Number.POSITIVE_INFINITY;
     const sure = near?.converged && gap === 1 && near.score > usualScore - doubtfulFall && offPx < doubtfulPx;
     if (near && sure) return near;
@@ -173,7 +176,7 @@ export function startFollower(
     if (px.value < 0 || py.value < 0 || px.value > picture.widthPx - 1 || py.value > picture.heightPx - 1)
       return null;
     const seen = search(picture, patch, { xPx: px.value, yPx: py.value }, radiusPx);
-    const wide = seen ? matcher.match(picture, blurred, seen.xPx, seen.yPx, noise, behind, brightness) : null;
+    const wide = seen ? match(seen.xPx, seen.yPx) : null;
     const acceptable = (m: Match | null): m is Match =>
       m?.converged === true &&
       m.score > Math.max(leastScore, usualScore - 0.4) &&
@@ -187,7 +190,6 @@ export function startFollower(
 
   /** A score that has sunk, with the blur in the model, and a residual that a turn of the body would leave. */
   const turns = (picture: Picture, found: Match, behind: Plate | null, brightness: number): boolean => {
-    bestScore = Math.max(bestScore, usualScore);
     if (!behind || usualScore > bestScore - turningFall) return false;
     return gauge.likeness(picture, model, found, behind, brightness) > turnLikeness;
   };
@@ -237,14 +239,30 @@ export function startFollower(
     learner?.weigh(found);
     cuttings.keep(n, picture, behind, brightness, found.xPx, found.yPx);
     const blurPx = exposureShare * Math.hypot(predict(frames, xs, n).rate, predict(frames, ys, n).rate);
+    if (turnsAbout) poses.set(n, { turnRad: found.turnRad, growth: found.growth });
     if (covered) return sighting(n, 'measured', found);
-    turning ||= sightings.length > still.frames && turns(picture, found, behind, brightness);
-    if (learner && behind && turning) {
+    bestScore = Math.max(bestScore, usualScore);
+    if (turnsAbout && !changing && usualScore < bestScore - turningFall - changingFall) {
+      learner?.adopt(posedModel(model, poseOf(n), turnsAbout));
+      changing = true;
+      turnsAbout = null;
+    } else if (
+      !turnsAbout &&
+      !changing &&
+      sightings.length > still.frames &&
+      turns(picture, found, behind, brightness)
+    ) {
+      centre = centreOf(model, meanBehind, noise);
+      turnsAbout = centre;
+      usualScore = bestScore;
+    }
+    if (learner && behind && changing) {
       if (found.score > leastScore) learner.refresh(picture, behind, brightness, found.xPx, found.yPx);
       model = learner.model();
-    } else if (learner?.learn(picture, behind, brightness, found.xPx, found.yPx, blurPx))
+    } else if (!turnsAbout && learner?.learn(picture, behind, brightness, found.xPx, found.yPx, blurPx))
       model = learner.model();
-    if (!turning) steady = sightings.length + 1;
+    if (!turnsAbout && !changing) steady = sightings.length + 1;
+    if (!changing) followable = sightings.length + 1;
     return sighting(n, 'measured', found);
   };
 
@@ -286,11 +304,18 @@ export function startFollower(
         matcher,
         cuttings,
         steady,
+        followable,
+        poses,
+        turnsAbout: centre,
         exposureShare,
         sighting,
       });
     },
   };
+}
+
+function meanOf(values: Float64Array): number {
+  return values.reduce((sum, v) => sum + v, 0) / values.length;
 }
 
 function meanPatchModel(still: StillBody): BodyModel {

@@ -1,5 +1,4 @@
-import type { Box } from './normalEquations.ts';
-import { quinticCoefficients, quinticWeights, TAPS, TAPS_BEFORE } from './spline.ts';
+import { quinticCoefficients, quinticSamples, quinticWeights, TAPS, TAPS_BEFORE } from './spline.ts';
 
 /** Pixels around the window that its spline reaches for a shift of less than a pixel. */
 export const REACH = 3;
@@ -28,9 +27,28 @@ export function makeLayer(samples: Float64Array, half: number): Layer {
   return { half, coefficients: quinticCoefficients(samples, side, side) };
 }
 
+/** A layer's samples, as `makeLayer` took them. */
+export function samplesOf({ half, coefficients }: Layer): Float64Array {
+  return quinticSamples(coefficients, 2 * (half + REACH) + 1);
+}
+
 export function sampledFor(half: number): Sampled {
   const n = (2 * half + 1) ** 2;
   return { value: new Float64Array(n), slopeX: new Float64Array(n), slopeY: new Float64Array(n) };
+}
+
+/** Part of a window, in its own columns and rows, ends included. */
+export interface Box {
+  readonly left: number;
+  readonly top: number;
+  readonly right: number;
+  readonly bottom: number;
+}
+
+/** A point of a body's window, from its zero [px]. */
+export interface WindowPoint {
+  readonly x: number;
+  readonly y: number;
 }
 
 /** Samples layers of one size; holds the buffers of the separable evaluation. */

@@ -159,7 +159,8 @@ export function cutPlate(plate: Plate, centreX: number, centreY: number, reach: 
   return cut;
 }
 
-function spread(mask: Uint8Array, side: number, value: 0 | 1): Uint8Array {
+/** Grows the pixels of a value by one pixel along rows and columns. */
+export function spread(mask: Uint8Array, side: number, value: 0 | 1): Uint8Array {
   const out = mask.slice();
   for (let row = 0; row < side; row++) {
     for (let column = 0; column < side; column++) {

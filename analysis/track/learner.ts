@@ -1,5 +1,5 @@
 import { jointLook } from './jointLook.ts';
-import { REACH } from './layer.ts';
+import { REACH, samplesOf } from './layer.ts';
 import { coveredAppearance, coveredModel, cutPlate, guessCoverage, type StillBody } from './learnBody.ts';
 import type { BodyModel, Match, Plate } from './match.ts';
 import { startMatting } from './matting.ts';
@@ -31,6 +31,8 @@ export interface Learner {
    * slow, it does not drift (shared limits: 0.0024 px over 300 frames), where a look replaced each frame would wander off.
    */
   refresh(picture: Picture, plate: Plate, brightness: number, xPx: number, yPx: number): void;
+  /** Takes a look as its own, of a body that will change from it. */
+  adopt(look: BodyModel): void;
   /** What a match with the present model says of the optics' point spread. */
   weigh(match: Match): void;
   /** Puts all that was learned into the model. */
@@ -96,6 +98,12 @@ export function startLearner(still: StillBody, plate: Plate): Learner | null {
         return a + refreshWeight * (now - a);
       });
       current = coveredModel(still.half, appearance, coverage, spreadPx2);
+    },
+    adopt(look) {
+      if (!look.coverage) return;
+      appearance = samplesOf(look.appearance);
+      coverage = samplesOf(look.coverage);
+      current = look;
     },
     weigh(match) {
       // Each match is a measurement of the spread about the one that its model had.

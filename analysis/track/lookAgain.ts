@@ -1,12 +1,13 @@
 import { blurModel } from './blur.ts';
 import type { Cuttings } from './cuttings.ts';
-import { leastScore, type PlacedBody, type Sighting } from './follow.ts';
 import { hiddenAtRest } from './hidden.ts';
-import { REACH } from './layer.ts';
+import { REACH, type WindowPoint } from './layer.ts';
 import { cutPlate, type StillBody } from './learnBody.ts';
 import { type Learner, mostBlurPx, type PlacedFrame } from './learner.ts';
 import type { BodyModel, Match, Matcher, Plate } from './match.ts';
+import { asAtRest, type Pose, posedModel } from './pose.ts';
 import { predict } from './predict.ts';
+import { leastScore, type PlacedBody, type Sighting } from './sighting.ts';
 
 /** What is known of a body when its last frame has come. */
 export interface Known {
@@ -19,6 +20,11 @@ export interface Known {
   readonly cuttings: Cuttings;
   /** Sightings, from the first, in which the body looked as at rest. */
   readonly steady: number;
+  /** … and up to which turn and growth were all that changed it. */
+  readonly followable: number;
+  /** Turn and growth by frame, where they are not as at rest; made better here. And the centre of a body that turns. */
+  readonly poses: Map<number, Pose>;
+  readonly turnsAbout: WindowPoint | null;
   readonly exposureShare: number;
   readonly sighting: (n: number, state: 'measured', match: Match) => Sighting;
 }
@@ -27,6 +33,11 @@ export interface Known {
 const mostLookFrames = 120;
 const leastLookFrames = 30;
 const mostLookPixels = 200_000;
+
+/** A look is learned from frames in which the body is turned by less than this: a tenth of a pixel at the rim of a usual marker. */
+const mostTurnRad = 0.01;
+/** A turn found larger than this is put into the model before it is trusted: the equations take it for small. */
+const farTurnRad = 0.02;
 
 /**
  * Matches the kept frames again. The first of them were matched with what was known of the body then; now its look is learned
@@ -48,36 +59,65 @@ export function lookAgain(sightings: readonly Sighting[], known: Known): Sightin
 function matchedAgain(
   sightings: readonly Sighting[],
   model: BodyModel,
-  { body, still, matcher, cuttings, steady, exposureShare, learner, sighting }: Known,
+  { body, still, matcher, cuttings, followable, poses, turnsAbout, exposureShare, learner, sighting }: Known,
 ): { sightings: Sighting[]; matched: Set<number> } {
   const speeds = speedsOf(sightings);
   const again = [...sightings];
   const matched = new Set<number>();
   const markX = body.xPx - still.centreX;
   const markY = body.yPx - still.centreY;
-  for (const [i, cut] of cuttings.of(sightings.slice(0, steady))) {
+  // From the last frame to the first: a turn is known late, and goes back to what it was at rest.
+  for (const [i, cut] of cuttings.of(sightings.slice(0, followable)).reverse()) {
     const s = sightings[i];
-    const blurred = blurModel(model, speeds[i].x * exposureShare, speeds[i].y * exposureShare);
     const x = s.xPx - markX - cut.left;
     const y = s.yPx - markY - cut.top;
-    const m = matcher.match(cut.picture, blurred, x, y, still.noise, cut.plate, cut.brightness);
+    const matchIn = (pose: Pose): Match | null => {
+      const posed = turnsAbout ? posedModel(model, pose, turnsAbout) : model;
+      const blurred = blurModel(posed, speeds[i].x * exposureShare, speeds[i].y * exposureShare);
+      return matcher.match(cut.picture, blurred, x, y, still.noise, cut.plate, cut.brightness, turnsAbout);
+    };
+    let pose = turnsAbout ? poseBefore(poses, s.n) : asAtRest;
+    let m = matchIn(pose);
+    if (m && turnsAbout && Math.abs(m.turnRad) > farTurnRad) {
+      pose = turned(pose, m);
+      m = matchIn(pose);
+    }
     if (!m?.converged || m.score <= leastScore) continue;
     learner?.weigh(m);
+    if (turnsAbout) poses.set(s.n, turned(pose, m));
     again[i] = sighting(s.n, 'measured', { ...m, xPx: m.xPx + cut.left, yPx: m.yPx + cut.top });
     matched.add(i);
   }
   return { sightings: again, matched };
 }
 
+/** The pose in a frame as the two after it let expect it, else as it was found before. */
+function poseBefore(poses: ReadonlyMap<number, Pose>, n: number): Pose {
+  const next = poses.get(n + 1);
+  const afterNext = poses.get(n + 2);
+  if (!next || !afterNext) return poses.get(n) ?? next ?? asAtRest;
+  return {
+    turnRad: 2 * next.turnRad - afterNext.turnRad,
+    growth: 2 * next.growth - afterNext.growth,
+  };
+}
+
+function turned(pose: Pose, by: Match): Pose {
+  return { turnRad: pose.turnRad + by.turnRad, growth: pose.growth + by.growth };
+}
+
 /** Kept frames in which the body is not smeared, spread evenly over those there are, with its place in them. */
 function sharpFrames(
   sightings: readonly Sighting[],
-  { body, still, cuttings, steady, exposureShare }: Known,
+  { body, still, cuttings, steady, poses, exposureShare }: Known,
 ): PlacedFrame[] {
   const speeds = speedsOf(sightings);
+  const turnOf = (s: Sighting) => poses.get(s.n)?.turnRad ?? 0;
+  const atRest = sightings.slice(0, still.frames).reduce((sum, s) => sum + turnOf(s), 0) / still.frames;
   const sharp = cuttings
     .of(sightings.slice(0, steady))
-    .filter(([i]) => exposureShare * Math.hypot(speeds[i].x, speeds[i].y) <= mostBlurPx);
+    .filter(([i]) => exposureShare * Math.hypot(speeds[i].x, speeds[i].y) <= mostBlurPx)
+    .filter(([i]) => Math.abs(turnOf(sightings[i]) - atRest) <= mostTurnRad);
   const wanted = mostLookPixels / (2 * still.half + 1) ** 2;
   const most = Math.min(mostLookFrames, Math.max(leastLookFrames, Math.round(wanted)));
   const every = Math.max(1, sharp.length / most);

@@ -1,6 +1,5 @@
-import { type Layer, makeSampler, sampledFor } from './layer.ts';
+import { type Box, type Layer, makeSampler, sampledFor, type WindowPoint } from './layer.ts';
 import {
-  type Box,
   emptyEquations,
   type Fitting,
   fillEquations,
@@ -64,6 +63,9 @@ export interface Match {
   /** Share of the mask's weight that lies inside the picture. */
   readonly inside: number;
   readonly converged: boolean;
+  /** Turn and growth against the model; 0 where they were not asked for. */
+  readonly turnRad: number;
+  readonly growth: number;
 }
 
 export interface Matcher {
@@ -73,6 +75,7 @@ export interface Matcher {
    * Cramér-Rao bound).
    *
    * @param sigma  expected standard deviation of a pixel's noise [grey levels]; sets where robust weights begin
+   * @param turnsAbout  centre of a body that turns: its turn and growth are found too
    * @returns null when the window has too little of the picture or the equations are singular
    */
   match(
@@ -83,6 +86,7 @@ export interface Matcher {
     sigma: number,
     plate: Plate | null,
     brightness: number,
+    turnsAbout?: WindowPoint | null,
   ): Match | null;
 }
 
@@ -121,7 +125,7 @@ export function makeMatcher(half: number): Matcher {
   let masked: Masked | null = null;
 
   return {
-    match(picture, model, startXPx, startYPx, sigma, plate, brightness) {
+    match(picture, model, startXPx, startYPx, sigma, plate, brightness, turnsAbout) {
       const { mask, appearance, coverage } = model;
       if (masked?.mask !== mask) masked = maskedBox(mask, side);
       const fitting: Fitting = {
@@ -166,15 +170,16 @@ export function makeMatcher(half: number): Matcher {
         }
         const dx = x - wholeX;
         const dy = y - wholeY;
+        const centre = turnsAbout ? { x: half + dx + turnsAbout.x, y: half + dy + turnsAbout.y } : null;
         sampler.sample(appearance, dx, dy, a, box);
         if (coverage) sampler.sample(coverage, dx, dy, c, box);
         fillFree(fitting, model.spreadPx2);
         if (steps === 1 && !fitGainAndOffset(fitting, level)) return null;
-        fillEquations(fitting, level, huberAt * noise, null, equations);
+        fillEquations(fitting, level, huberAt * noise, centre, equations);
         if (!cleared && lengthPx < nearPx) {
           cleared = true;
           if (leaveOutForeign(fitting, level, foreignAt * noise))
-            fillEquations(fitting, level, huberAt * noise, null, equations);
+            fillEquations(fitting, level, huberAt * noise, centre, equations);
         }
 
         const { matrix, right, sumW, sumMask } = equations;
@@ -224,6 +229,8 @@ export function makeMatcher(half: number): Matcher {
             gain: level.gain + step[2],
             inside,
             converged: converged || lengthPx < goodEnoughPx,
+            turnRad: turnsAbout ? step[4] : 0,
+            growth: turnsAbout ? step[5] : 0,
           };
         }
         level.gain += step[2];

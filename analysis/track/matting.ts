@@ -31,7 +31,7 @@ export interface Matting {
 }
 
 /** Coverage as it is known, and the variance of the point spread that smears over its rim. */
-export interface Rim {
+interface Rim {
   readonly coverage: Float64Array;
   readonly spreadPx2: number;
 }

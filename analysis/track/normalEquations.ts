@@ -1,15 +1,7 @@
 import type { Sampled } from './layer.ts';
 
-/** Part of a window, in its own columns and rows, ends included. */
-export interface Box {
-  readonly left: number;
-  readonly top: number;
-  readonly right: number;
-  readonly bottom: number;
-}
-
-/** Unknowns of a match in the order of the equations: place x and y, gain, offset, turn about the body's zero. */
-export const UNKNOWNS = 5;
+/** Unknowns of a match in the order of the equations: place x and y, gain, offset, turn about the body's centre, growth. */
+export const UNKNOWNS = 6;
 
 /** Normal equations of one Gauss-Newton step, with the sums that tell how well the model fits. Buffers are reused. */
 export interface NormalEquations {
@@ -148,7 +140,7 @@ export function emptyEquations(): NormalEquations {
  * the innermost loop of tracking.
  *
  * @param huber       residuals beyond this lose weight as 1/|r| [grey levels]
- * @param turnsAbout  the body's zero in the window's columns and rows, where its turn is an unknown too
+ * @param turnsAbout  the body's centre in the window's columns and rows, where its turn and growth are unknown too
  */
 export function fillEquations(
   { pixel, count, seen, behind, free, mask, appearance, coverage, side }: Fitting,
@@ -183,6 +175,13 @@ export function fillEquations(
   let ct = 0;
   let tt = 0;
   let rt = 0;
+  let xg = 0;
+  let yg = 0;
+  let ag = 0;
+  let cg = 0;
+  let tg = 0;
+  let gg = 0;
+  let rg = 0;
   let sumW = 0;
   let sumMask = 0;
   let sumWR2 = 0;
@@ -219,8 +218,11 @@ export function fillEquations(
     sumMask += m;
     sumWR2 += w * r * r;
     if (turnsAbout) {
-      // A turn by θ carries the point (x, y) about the zero by θ (-y, x).
-      const jt = jy * ((u % side) - turnsAbout.x) - jx * (Math.floor(u / side) - turnsAbout.y);
+      // A turn by θ carries a point (x, y) from the centre by θ (-y, x), growth by (x, y).
+      const away = (u % side) - turnsAbout.x;
+      const below = Math.floor(u / side) - turnsAbout.y;
+      const jt = jy * away - jx * below;
+      const jg = jx * away + jy * below;
       const wt = w * jt;
       xt += wt * jx;
       yt += wt * jy;
@@ -228,29 +230,24 @@ export function fillEquations(
       ct += wt * cv;
       tt += wt * jt;
       rt += wt * r;
+      const wg = w * jg;
+      xg += wg * jx;
+      yg += wg * jy;
+      ag += wg * av;
+      cg += wg * cv;
+      tg += wt * jg;
+      gg += wg * jg;
+      rg += wg * r;
     }
   }
   const { matrix, right } = into;
-  matrix[0] = xx;
-  matrix[1] = xy;
-  matrix[2] = xa;
-  matrix[3] = xc;
-  matrix[4] = xt;
-  matrix[6] = yy;
-  matrix[7] = ya;
-  matrix[8] = yc;
-  matrix[9] = yt;
-  matrix[12] = aa;
-  matrix[13] = ac;
-  matrix[14] = at;
-  matrix[18] = cc;
-  matrix[19] = ct;
-  matrix[24] = turnsAbout ? tt : 1;
-  right[0] = rx;
-  right[1] = ry;
-  right[2] = ra;
-  right[3] = rc;
-  right[4] = rt;
+  matrix.set([xx, xy, xa, xc, xt, xg], 0);
+  matrix.set([yy, ya, yc, yt, yg], UNKNOWNS + 1);
+  matrix.set([aa, ac, at, ag], 2 * (UNKNOWNS + 1));
+  matrix.set([cc, ct, cg], 3 * (UNKNOWNS + 1));
+  matrix.set(turnsAbout ? [tt, tg] : [1, 0], 4 * (UNKNOWNS + 1));
+  matrix[5 * (UNKNOWNS + 1)] = turnsAbout ? gg : 1;
+  right.set([rx, ry, ra, rc, rt, rg]);
   into.sumW = sumW;
   into.sumMask = sumMask;
   into.sumWR2 = sumWR2;

@@ -43,3 +43,10 @@ export function predict(
   const t = frame - last;
   return { value: a + b * t + c * t * t, rate: b + 2 * c * t };
 }
+
+/** Where a slowly changing value will be: the straight line through its first and last places. */
+export function predictLine(frames: readonly number[], values: readonly number[], frame: number): number {
+  const n = frames.length;
+  const rate = (values[n - 1] - values[0]) / (frames[n - 1] - frames[0]);
+  return values[n - 1] + rate * (frame - frames[n - 1]);
+}

@@ -73,6 +73,26 @@ export function quinticWeights(t: number, weights: Float64Array, slopes: Float64
   }
 }
 
+/** Values at the samples themselves of a quintic spline on a square of the given side; mirrored at the edges. */
+export function quinticSamples(coefficients: Float64Array, side: number): Float64Array {
+  const weights = new Float64Array(TAPS);
+  quinticWeights(0, weights, new Float64Array(TAPS));
+  const mirrored = (i: number) => (i < 0 ? -i : i >= side ? 2 * (side - 1) - i : i);
+  const along = (from: Float64Array, stride: number, other: number) => {
+    const out = new Float64Array(from.length);
+    for (let line = 0; line < side; line++) {
+      for (let i = 0; i < side; i++) {
+        let sum = 0;
+        for (let k = 0; k < TAPS; k++)
+          sum += weights[k] * from[line * other + mirrored(i - TAPS_BEFORE + k) * stride];
+        out[line * other + i * stride] = sum;
+      }
+    }
+    return out;
+  };
+  return along(along(coefficients, 1, side), side, 1);
+}
+
 /** Slopes, at the samples themselves, of the quintic spline through width · height values [per sample]. */
 export function slopesOf(
   values: ArrayLike<number>,

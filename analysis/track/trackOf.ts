@@ -1,5 +1,5 @@
 import type { CameraShift } from './cameraShift.ts';
-import type { Sighting } from './follow.ts';
+import type { Sighting } from './sighting.ts';
 import type { Track } from './track.ts';
 
 /**

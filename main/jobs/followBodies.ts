@@ -7,11 +7,12 @@ import { type Camera, judgeCamera, registered, shakenPlate } from '../../analysi
 import type { CameraShift } from '../../analysis/track/cameraShift.ts';
 import { startCrossings } from '../../analysis/track/crossings.ts';
 import { doubledFrames, withoutFrames } from '../../analysis/track/doubledFrames.ts';
-import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
+import { type Follower, startFollower } from '../../analysis/track/follow.ts';
 import type { Plate } from '../../analysis/track/match.ts';
 import { plateOf, type RestPlace } from '../../analysis/track/plate.ts';
 import { type Rest, startRest } from '../../analysis/track/rest.ts';
 import { type SampledFrame, startSampling } from '../../analysis/track/sampling.ts';
+import type { PlacedBody, Sighting } from '../../analysis/track/sighting.ts';
 import type { Picture, Track, WideSearch } from '../../analysis/track/track.ts';
 import { trackOf } from '../../analysis/track/trackOf.ts';
 import type { FootageIndex, FrameSource } from '../footage/frameSource.ts';

@@ -1,7 +1,7 @@
 import type { Finding } from '../../analysis/sheet/result.ts';
-import type { PlacedBody } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
 import { saturatedShare } from '../../analysis/track/saturation.ts';
+import type { PlacedBody } from '../../analysis/track/sighting.ts';
 import type { Picture } from '../../analysis/track/track.ts';
 
 /** Bodies that are too bright to show their shape. */

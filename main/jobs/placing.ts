@@ -1,7 +1,7 @@
 import { lensProblem } from '../../analysis/scale/scaleProblems.ts';
 import type { Sheet } from '../../analysis/sheet/sheet.ts';
-import type { PlacedBody } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
+import type { PlacedBody } from '../../analysis/track/sighting.ts';
 import type { Picture } from '../../analysis/track/track.ts';
 import { trackability } from '../../analysis/track/trackability.ts';
 import { Refusal } from '../refusal.ts';

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { bridgeGaps } from '../../analysis/track/bridge.ts';
 import { doubledFrames, withoutFrames } from '../../analysis/track/doubledFrames.ts';
-import type { Sighting } from '../../analysis/track/follow.ts';
+import type { Sighting } from '../../analysis/track/sighting.ts';
 
 const seen = (n: number, yPx: number): Sighting => ({
   n,

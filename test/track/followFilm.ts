@@ -1,8 +1,9 @@
-import { type Follower, type PlacedBody, type Sighting, startFollower } from '../../analysis/track/follow.ts';
+import { type Follower, startFollower } from '../../analysis/track/follow.ts';
 import { halfOf } from '../../analysis/track/patchModel.ts';
 import { plateOf } from '../../analysis/track/plate.ts';
 import { startRest } from '../../analysis/track/rest.ts';
 import { startSampling } from '../../analysis/track/sampling.ts';
+import type { PlacedBody, Sighting } from '../../analysis/track/sighting.ts';
 import type { Picture, WideSearch } from '../../analysis/track/track.ts';
 import { trackability } from '../../analysis/track/trackability.ts';
 
