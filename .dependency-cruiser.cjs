@@ -16,7 +16,8 @@ module.exports = {
     },
     {
       name: 'analysis-libraries',
-      comment: 'zod for the border and ml-matrix for linear algebra are the only libraries that the measurement itself needs',
+      comment:
+        'zod for the border and ml-matrix for linear algebra are the only libraries that the measurement itself needs',
       severity: 'error',
       from: { path: '^analysis/' },
       to: { dependencyTypes: ['npm', 'npm-dev', 'npm-optional'], pathNot: '/(zod|ml-matrix)/' },
