@@ -16,8 +16,11 @@ export type ModelName = z.output<typeof modelNameSchema>;
 
 /** What is asked of the theory beyond its usual answer. */
 export const theorySettingsSchema = z.object({
-  /** Models to hold the tracks against; absent: all that need no simulation. */
-  models: z.array(modelNameSchema).min(1).optional(),
+  /** Models to hold the tracks against; absent: all. The linked tether has a name in results, but cannot be asked for yet. */
+  models: z
+    .array(modelNameSchema.exclude(['linkedTether']))
+    .min(1)
+    .optional(),
   /** Bounds of parameters, narrower than those of the models: a model that has no value within them is left out. */
   bounds: z
     .array(

@@ -12,7 +12,8 @@ export function admitted(
   const { id } = stated.body;
   const concerned = models.filter(
     (model) =>
-      model.concerns(stated) && (settings?.models ? settings.models.includes(model.name) : !model.expensive),
+      model.concerns(stated) &&
+      (settings?.models ? settings.models.some((name) => name === model.name) : !model.expensive),
   );
   const refusals = new Map<string, Model[]>();
   const able = concerned.filter((model) => {
